@@ -1,4 +1,5 @@
 using System.Collections.Concurrent;
+using System.Diagnostics;
 using Permute.Data;
 using Permute.Design;
 
@@ -54,6 +55,29 @@ public sealed class RelabelingLoop : IDisposable
         return RunResult.From(store.Chunks, loop);
     }
 
+    /// <summary>What the chunks of a run folder say together. Throws <see cref="InputException"/> when the first, which holds the observed arrangement, is not done.</summary>
+    internal RunResult Join(IReadOnlyList<Chunk> chunks, string run)
+    {
+        if (chunks.Count == 0 || chunks[0].First != 0)
+            throw new InputException($"{run}: the first chunk of relabelings, which holds the data as observed, is not done yet; run permute work (or permute test) first.");
+        return RunResult.From(chunks, loop);
+    }
+
+    /// <summary>The voxels above forming threshold <paramref name="threshold"/> in the data as observed, exactly as the loop takes them: those with T &gt; u, and
+    /// (in the directions less and both) those with T &lt; −u.</summary>
+    internal (bool[] Positive, bool[] Negative) ObservedAbove(int threshold) => ObservedScan.Above(loop, threshold);
+
+    /// <summary>The time that all planned relabelings would take, from a short calibration on a share of them.</summary>
+    internal TimeSpan Foresee(CancellationToken cancel)
+    {
+        int share = Math.Min(loop.Plan.Count, Math.Clamp(TileSize * threads, 64, 1024));
+        var store = new FirstChunk(share);
+        Fill(store, null, cancel);
+        long start = Stopwatch.GetTimestamp();
+        Fill(store, null, cancel);
+        return Stopwatch.GetElapsedTime(start) * ((double)loop.Plan.Count / share);
+    }
+
     /// <summary>Computes every chunk the store still misses. <paramref name="progress"/> hears relabelings done (fractions of a tile included).</summary>
     internal void Fill(IChunkStore store, IProgress<double>? progress, CancellationToken cancel)
     {
@@ -98,6 +122,13 @@ public sealed class RelabelingLoop : IDisposable
 
     /// <inheritdoc/>
     public void Dispose() => loop.Dispose();
+
+    private sealed class FirstChunk(int count) : IChunkStore
+    {
+        public IEnumerable<(int First, int Count)> Missing() => [(0, count)];
+
+        public void Save(Chunk chunk) { }
+    }
 
     private sealed class PendingChunk(int first, int count, int tiles)
     {
