@@ -8,7 +8,7 @@ namespace Permute.Data;
 /// floats per image, 64-byte aligned. What a float cannot hold of a value (double or scaled integer images, tables) is kept beside it as a
 /// second float, so a value read back is exact to about 48 bits; images stored in single precision need no second part.
 /// </summary>
-public sealed unsafe class SubjectMatrix : IDisposable
+public sealed unsafe partial class SubjectMatrix : IDisposable
 {
     /// <summary>Voxels per block.</summary>
     public const int Lanes = 64;
@@ -63,6 +63,12 @@ public sealed unsafe class SubjectMatrix : IDisposable
     public void KeepSecondParts()
     {
         if (low == null) low = Allocate();
+    }
+
+    private void ForgetSecondParts()
+    {
+        NativeMemory.AlignedFree(low);
+        low = null;
     }
 
     /// <summary>Copies the n values of one voxel into <paramref name="column"/> (length n).</summary>

@@ -1,0 +1,34 @@
+using Permute.Data;
+using Permute.Design;
+
+namespace Permute.Engine;
+
+/// <summary>Which voxels of the observed map lie above a forming threshold, by the loop's own single-precision sums in their canonical order, so that the observed clusters
+/// are the ones that relabeling 0 was recorded with.</summary>
+internal static unsafe class ObservedScan
+{
+    /// <summary>Voxels with T &gt; u, and voxels with T &lt; −u; in direction greater or less only the side tested is filled.</summary>
+    public static (bool[] Positive, bool[] Negative) Above(LoopData loop, int threshold)
+    {
+        var up = new bool[loop.Study.Voxels];
+        var down = new bool[loop.Study.Voxels];
+        var signs = new sbyte[loop.Model.Images];
+        loop.SignsOf(0, signs, new int[signs.Length]);
+        using ISubsetSums sums = SubsetSums.Create(loop.Groups, loop.InstructionSet);
+        sums.Take(new Tile(loop.Groups, 0, 1, signs));
+        float limit = loop.Limits[threshold];
+        float* v = stackalloc float[sums.Width];
+        for (int first = 0; first < loop.Study.Voxels; first += sums.Width)
+        {
+            sums.Tabulate(loop.Packed.Block(first / SubjectMatrix.Lanes) + first % SubjectMatrix.Lanes);
+            sums.Sums(0, v);
+            for (int lane = 0; lane < sums.Width && first + lane < up.Length; lane++)
+            {
+                up[first + lane] = v[lane] > limit;
+                down[first + lane] = loop.Both && v[lane] < -limit;
+            }
+        }
+        // For less the packed data are negated: what is above is negative.
+        return loop.Model.Direction == Direction.Less ? (down, up) : (up, down);
+    }
+}
