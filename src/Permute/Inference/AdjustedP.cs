@@ -1,3 +1,5 @@
+using Permute.Statistics;
+
 namespace Permute.Inference;
 
 /// <summary>
@@ -6,8 +8,8 @@ namespace Permute.Inference;
 /// </summary>
 public static class AdjustedP
 {
-    /// <summary>Of a statistic, ties included by <see cref="Ties"/>.</summary>
-    public static double Of(NullDistribution maxima, double t) => Fraction(maxima, Ties.Floor(t));
+    /// <summary>Of a statistic, ties included by <see cref="Ties.Bound"/>.</summary>
+    public static double Of(NullDistribution maxima, double t) => Fraction(maxima, Ties.Bound(t));
 
     /// <summary>Of an extent in voxels, compared as integers.</summary>
     public static double OfExtent(NullDistribution extents, int voxels) => Fraction(extents, voxels);

@@ -1,3 +1,5 @@
+using Permute.Statistics;
+
 namespace Permute.Inference;
 
 /// <summary>Where the permutation threshold and the field-theory threshold find the same voxels and where they part.</summary>
@@ -15,7 +17,7 @@ public static class Agreement
     /// <summary>The label of each voxel, from its evidence, the permutation's critical value (strictly above survives) and the theory's threshold
     /// (reaching it survives).</summary>
     public static double[] Map(double[] evidence, double permutationCritical, double theoryThreshold) =>
-        [.. evidence.Select(e => (CriticalValue.Survives(e, permutationCritical), Ties.AtLeast(e, theoryThreshold)) switch
+        [.. evidence.Select(e => (CriticalValue.Survives(e, permutationCritical), Ties.Reaches(e, theoryThreshold)) switch
         {
             (true, true) => 1.0,
             (true, false) => 2.0,

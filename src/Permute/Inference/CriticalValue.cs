@@ -1,3 +1,5 @@
+using Permute.Statistics;
+
 namespace Permute.Inference;
 
 /// <summary>
@@ -13,7 +15,7 @@ public static class CriticalValue
     public static double Of(NullDistribution maxima, double alpha) => maxima.Largest(Allowed(maxima.Count, alpha) + 1);
 
     /// <summary>Whether a statistic lies strictly above <paramref name="critical"/>; a tie does not.</summary>
-    public static bool Survives(double t, double critical) => critical < Ties.Floor(t);
+    public static bool Survives(double t, double critical) => critical < Ties.Bound(t);
 
     /// <summary>The smallest extent that survives, voxels: the critical one and one more.</summary>
     public static int SmallestSurviving(NullDistribution extents, double alpha) => (int)Of(extents, alpha) + 1;

@@ -60,7 +60,7 @@ internal static class Describe
             FwhmVoxels = fwhm,
             FwhmMm = [.. fwhm.Select((f, axis) => f * size[axis])],
             Assumed = input.Request.AssumeFwhmMm != null,
-            ReselCounts = input.Resels is { } r ? [r.R0, r.R1, r.R2, r.R3] : null,
+            ReselCounts = input.Resels?.ToArray(),
             VolumeInResels = input.Resels == null ? null : mask.Count / fwhm.Aggregate(1.0, (product, f) => product * (f ?? 1)),
             Reason = input.Resels == null ? input.Smoothness?.Reason ?? "no smoothness was estimated" : null,
         };

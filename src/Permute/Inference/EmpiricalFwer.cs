@@ -1,3 +1,5 @@
+using Permute.Statistics;
+
 namespace Permute.Inference;
 
 /// <summary>
@@ -9,7 +11,7 @@ namespace Permute.Inference;
 public sealed record EmpiricalFwer(double Rate, double[]? Interval)
 {
     /// <summary>Of the rule "T at least <paramref name="u"/>"; null without draws.</summary>
-    public static EmpiricalFwer? OfHeight(NullDistribution maxima, double u) => Of(maxima, Ties.Floor(u));
+    public static EmpiricalFwer? OfHeight(NullDistribution maxima, double u) => Of(maxima, Ties.Bound(u));
 
     /// <summary>Of the rule "a cluster of <paramref name="voxels"/> or more"; null without draws.</summary>
     public static EmpiricalFwer? OfExtent(NullDistribution extents, int voxels) => Of(extents, voxels);

@@ -1,3 +1,5 @@
+using Permute.Statistics;
+
 namespace Permute.Inference;
 
 /// <summary>The maximum statistic: its thresholds side by side, the adjusted p of every voxel, and what survives by each method.</summary>
@@ -33,8 +35,8 @@ internal sealed class HeightFindings
         Survivors = new SurvivorSummary(
             surviving,
             input.StepDown == null ? null : Math.Max(surviving, stepDown.Values.Count(p => p <= rules.Alpha)),
-            theory.Height is { } u ? evidence.Count(e => Ties.AtLeast(e, u)) : null,
-            evidence.Count(e => Ties.AtLeast(e, theory.Bonferroni)));
+            theory.Height is { } u ? evidence.Count(e => Ties.Reaches(e, u)) : null,
+            evidence.Count(e => Ties.Reaches(e, theory.Bonferroni)));
     }
 
     public HeightSummary Summary { get; }

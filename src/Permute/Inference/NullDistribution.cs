@@ -1,3 +1,5 @@
+using Permute.Statistics;
+
 namespace Permute.Inference;
 
 /// <summary>The maxima of one measure over the relabelings, sorted once so that any number of values can be judged by them.</summary>
@@ -35,7 +37,7 @@ public sealed class NullDistribution
     /// <summary>B = N − 1: relabelings without the observed one.</summary>
     public int Draws => Count - 1;
 
-    /// <summary>Maxima not below <paramref name="floor"/>, the observed one included. For a statistic t the floor is <see cref="Ties.Floor"/>(t), for an extent itself.</summary>
+    /// <summary>Maxima not below <paramref name="floor"/>, the observed one included. For a statistic t the floor is <see cref="Ties.Bound"/>(t), for an extent itself.</summary>
     public int CountFrom(double floor)
     {
         int low = 0, high = Count;

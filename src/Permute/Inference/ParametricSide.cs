@@ -20,8 +20,8 @@ public sealed class ParametricSide
         Bonferroni = FieldTheory.Bonferroni.Threshold(field, voxels, alpha, Sides);
         Undefined = input.Study.Mask == null ? "no field theory for a table of variables"
             : input.Resels == null ? input.Smoothness?.Reason ?? "no smoothness, so no field theory"
-            : input.Model.DegreesOfFreedom <= dimensions
-                ? $"{input.Model.DegreesOfFreedom} degrees of freedom are too few for field theory in {dimensions} dimensions; at least {dimensions + 1} are needed"
+            : field.Nu <= dimensions
+                ? $"{field.Nu} degrees of freedom are too few for field theory in {dimensions} dimensions: at least {dimensions + 1} are needed"
             : null;
         if (Undefined != null) return;
         resels = input.Resels;
@@ -44,7 +44,13 @@ public sealed class ParametricSide
     public double Bonferroni { get; }
 
     /// <summary>Field-theory adjusted p of a height in evidence units; null without a theory.</summary>
-    public double? HeightP(double u) => resels == null ? null : HeightTheory.P(resels, field, u, Sides);
+    public double? HeightP(double u)
+    {
+        if (resels == null) return null;
+        if (double.IsPositiveInfinity(u)) return 0;
+        double p = HeightTheory.P(resels, field, u, Sides);
+        return double.IsNaN(p) ? null : p;
+    }
 
     /// <summary>Bonferroni-adjusted p of a height in evidence units.</summary>
     public double BonferroniP(double u) => FieldTheory.Bonferroni.P(field, voxels, u, Sides);

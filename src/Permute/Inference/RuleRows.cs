@@ -1,4 +1,5 @@
 using System.Numerics;
+using Permute.Statistics;
 
 namespace Permute.Inference;
 
@@ -10,7 +11,7 @@ internal sealed record RuleRows(double Alpha, BigInteger Possible, double Step)
 {
     /// <summary>The permutation test of a real-valued statistic.</summary>
     public PermutationSummary Permutation(NullDistribution maxima) =>
-        Permutation(maxima, Ties.Floor(maxima.Observed));
+        Permutation(maxima, Ties.Bound(maxima.Observed));
 
     /// <summary>The permutation test of an extent in voxels.</summary>
     public PermutationSummary ExtentPermutation(NullDistribution extents) =>

@@ -35,8 +35,8 @@ internal static class SmoothnessChecks
     {
         double worst = new[] { smoothness.Lag2Fwhm, smoothness.Lag3Fwhm }
             .Where(lag => lag != null)
-            .SelectMany(lag => lag!.Zip(smoothness.FwhmVoxels, (far, near) => far / near))
-            .Where(ratio => double.IsFinite(ratio)).DefaultIfEmpty(double.NaN).Max();
+            .SelectMany(lag => lag!.Zip(smoothness.FwhmVoxels, (far, near) => far / near ?? double.NaN))
+            .Where(double.IsFinite).DefaultIfEmpty(double.NaN).Max();
         if (double.IsNaN(worst)) return null;
         return Check.Of("autocorrelation-long-tailed", worst > TailLimit ? Check.Caution : Check.Good, worst, TailLimit,
             $"the explanation: Eklund, Nichols & Knutsson 2016, PNAS 113:7900–7905; {Check.OurLimit}",

@@ -1,6 +1,7 @@
 using FsCheck.Xunit;
 using Permute.Design;
 using Permute.Inference;
+using Permute.Statistics;
 
 namespace Permute.Tests.Inference;
 
@@ -40,9 +41,9 @@ public class CriticalValueTests
         {
             double t = i < maxima.Length ? maxima[i] : TiedValue(ref random);
             double p = AdjustedP.Of(sorted, t);
-            bool any = sorted.CountFrom(Ties.Floor(t)) > 0; // a value above every maximum is none of an observed map
+            bool any = sorted.CountFrom(Ties.Bound(t)) > 0; // a value above every maximum is none of an observed map
             if (any && CriticalValue.Survives(t, critical) != p <= alpha) return false;
-            if (any && p != maxima.Count(m => Ties.AtLeast(m, t)) / (double)maxima.Length) return false;
+            if (any && p != maxima.Count(m => Ties.Reaches(m, t)) / (double)maxima.Length) return false;
         }
         return true;
     }

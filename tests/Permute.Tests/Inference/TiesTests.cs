@@ -1,4 +1,5 @@
 using Permute.Inference;
+using Permute.Statistics;
 
 namespace Permute.Tests.Inference;
 
@@ -12,14 +13,14 @@ public class TiesTests
     [InlineData(0.1 - 2e-9, 0.1, false)]
     [InlineData(1e6 - 9e-4, 1e6, true)]
     [InlineData(1e6 - 2e-3, 1e6, false)]
-    public void A_value_within_a_billionth_counts_as_at_least_as_large(double m, double t, bool expected) => Assert.Equal(expected, Ties.AtLeast(m, t));
+    public void A_value_within_a_billionth_counts_as_at_least_as_large(double m, double t, bool expected) => Assert.Equal(expected, Ties.Reaches(m, t));
 
     [Fact]
     public void An_infinity_ties_with_itself_alone()
     {
-        Assert.True(Ties.AtLeast(double.PositiveInfinity, double.PositiveInfinity));
-        Assert.False(Ties.AtLeast(1e300, double.PositiveInfinity));
-        Assert.True(Ties.AtLeast(double.PositiveInfinity, 3));
-        Assert.True(Ties.AtLeast(double.NegativeInfinity, double.NegativeInfinity));
+        Assert.True(Ties.Reaches(double.PositiveInfinity, double.PositiveInfinity));
+        Assert.False(Ties.Reaches(1e300, double.PositiveInfinity));
+        Assert.True(Ties.Reaches(double.PositiveInfinity, 3));
+        Assert.True(Ties.Reaches(double.NegativeInfinity, double.NegativeInfinity));
     }
 }
