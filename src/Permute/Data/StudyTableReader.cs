@@ -22,14 +22,15 @@ public static class StudyTableReader
                 .FromText(text);
             foreach (var row in reader)
             {
-                if (row.LineNumberToExcl - row.LineNumberFrom > 1)
-                    throw new InputException($"{path}, line {row.LineNumberFrom}: a double quote opens here and is not closed on the same line; remove it or close it.");
+                int line = row.RowIndex == 0 ? 1 : row.LineNumberFrom; // without a header of its own, the reader numbers the first row wrongly
+                if (row.Span.Contains('\n'))
+                    throw new InputException($"{path}, line {line}: a double quote opens here and is not closed on the same line; remove it or close it.");
                 var cells = new string[row.ColCount];
                 for (int c = 0; c < cells.Length; c++) cells[c] = row[c].ToString().Trim();
                 bool blank = rows.Count == 0 ? cells.Length <= 1 && cells.All(c => c.Length == 0) : cells.All(c => c.Length == 0);
                 if (blank) continue;
                 rows.Add(cells);
-                lines.Add(row.LineNumberFrom);
+                lines.Add(line);
             }
         }
         catch (Exception e) when (e is InvalidDataException or NotSupportedException)

@@ -25,7 +25,7 @@ public class StudyColumnsTests
     [Fact]
     public void A_mixture_is_an_error_that_names_the_rarer_cells_and_their_lines()
     {
-        Says(Fault(() => StudyColumns.KindOf(Table("1", "2", "old", "4"), "x")), "t.tsv", "'x'", "'old' on line 4", "others".Replace("others", "the other cells are numbers"));
+        Says(Fault(() => StudyColumns.KindOf(Table("1", "2", "old", "4"), "x")), "t.tsv", "'x'", "'old' on line 4", "the other cells are numbers");
         Says(Fault(() => StudyColumns.KindOf(Table("a", "2", "b", "c"), "x")), "'2' on line 3", "the other cells are text");
         Says(Fault(() => StudyColumns.KindOf(Table("1", "2", "NaN", "inf"), "x")), "'NaN', 'inf' on lines 4 and 5", "n/a");
     }
