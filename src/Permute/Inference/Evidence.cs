@@ -19,14 +19,6 @@ public static class Evidence
     /// <summary>The evidence of every voxel.</summary>
     public static double[] Of(Direction direction, double[] t) => [.. t.Select(v => Of(direction, v))];
 
-    /// <summary>The direction's word: greater, less or both.</summary>
-    public static string Word(Direction direction) => direction switch
-    {
-        Direction.Greater => "greater",
-        Direction.Less => "less",
-        _ => "both",
-    };
-
     /// <summary>Sign of a T: +1 or −1, +1 for zero.</summary>
     public static int Sign(double t) => t < 0 ? -1 : 1;
 }

@@ -12,7 +12,7 @@ internal static class ExtentRow
         var fieldTheory = rules.Extent(
             extents,
             extentTheory?.SmallestSurviving(rules.Alpha),
-            observed == 0 && extentTheory != null ? 1 : extentTheory?.P(observed),
+            extentTheory?.Beta == null ? null : observed == 0 ? 1 : extentTheory.P(observed),
             theory.Undefined ?? extentTheory?.Reason);
         return new ExtentSummary
         {
@@ -25,7 +25,9 @@ internal static class ExtentRow
             FieldTheory = fieldTheory,
             Diagnosis = Diagnosis.Of(
                 maxima, extents.Count, extents.Exhaustive,
-                theory.Sides * extentTheory?.ExpectedVoxelsAbove, theory.Sides * extentTheory?.ExpectedClusters, fieldTheory.Verdict),
+                Known(extentTheory?.ExpectedVoxelsAbove), Known(extentTheory?.ExpectedClusters), fieldTheory.Verdict),
         };
     }
+
+    private static double? Known(double? value) => value is { } v && double.IsFinite(v) ? v : null;
 }

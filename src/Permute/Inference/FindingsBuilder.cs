@@ -1,12 +1,12 @@
 namespace Permute.Inference;
 
 /// <summary>From what the relabelings gave to findings: every number of the summary and every map.</summary>
-public static class FindingsBuilder
+public static partial class FindingsBuilder
 {
     /// <summary>Builds them; pure arithmetic, no I/O.</summary>
     public static Findings Build(InferenceInput input)
     {
-        double smallestP = Describe.SmallestP(input), alpha = input.Request.Alpha;
+        double smallestP = input.Plan.SmallestP(input.Model.Direction, input.Maxima.Count), alpha = input.Request.Alpha;
         var rules = new RuleRows(alpha, input.Model.Relabelings.Possible, smallestP);
         var theory = new ParametricSide(input);
         var height = new HeightFindings(input, theory, rules);
@@ -14,10 +14,10 @@ public static class FindingsBuilder
         var summary = new Summary
         {
             Alpha = alpha,
-            Data = Describe.Data(input),
-            Model = Describe.Model(input.Model),
-            Relabelings = Describe.Relabelings(input),
-            Smoothness = Describe.Smoothness(input),
+            Data = Describe(input.Study),
+            Model = Describe(input.Model),
+            Relabelings = Describe(input.Plan, input.Model.Direction, input.Maxima.Count) with { Exhaustive = input.Exhaustive },
+            Smoothness = DescribeSmoothness(input),
             Height = height.Summary,
             Survivors = height.Survivors,
             Checks = [.. DesignChecks.Of(input, theory, smallestP), .. SmoothnessChecks.Of(input, theory), .. ResidualChecks.Of(input)],

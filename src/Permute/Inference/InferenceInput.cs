@@ -47,7 +47,7 @@ public sealed record InferenceInput
     /// <summary>Resel counts of the mask at the smoothness used, or null.</summary>
     public ReselCounts? Resels { get; init; }
 
-    /// <summary>FWHM per axis in voxels that the theory uses, estimated or assumed; NaN for an axis without pairs; null without smoothness.</summary>
+    /// <summary>FWHM per axis in voxels that the theory uses, estimated or assumed; null without smoothness. What it says of an axis without neighbouring pairs counts for nothing.</summary>
     public double[]? FwhmVoxels { get; init; }
 
     /// <summary>Where the numbers come from.</summary>
@@ -55,4 +55,11 @@ public sealed record InferenceInput
 
     /// <summary>All possible relabelings were used.</summary>
     public bool Exhaustive => Plan.Exhaustive && Complete && Maxima.Count == Plan.Count;
+
+    /// <summary><see cref="FwhmVoxels"/> with null where an axis has none.</summary>
+    internal double?[] UsedFwhm =>
+        [.. Enumerable.Range(0, 3).Select(axis => FwhmVoxels is { } f && double.IsFinite(f[axis]) && Smoothness?.Pairs[axis] != 0 ? f[axis] : (double?)null)];
+
+    /// <summary>Why there is no smoothness.</summary>
+    internal string NoSmoothness => Smoothness?.Reason ?? "no smoothness was estimated";
 }

@@ -7,7 +7,7 @@ public sealed class ParametricSide
 {
     private readonly TField field;
     private readonly ReselCounts? resels;
-    private readonly int voxels, dimensions;
+    private readonly int voxels, dimensions, sides;
     private readonly double alpha;
 
     /// <summary>The rules for what <paramref name="input"/> tests.</summary>
@@ -15,23 +15,18 @@ public sealed class ParametricSide
     {
         field = new TField(input.Model.DegreesOfFreedom);
         (voxels, alpha) = (input.Observed.Length, input.Request.Alpha);
-        Sides = Evidence.Sides(input.Model.Direction);
+        sides = Evidence.Sides(input.Model.Direction);
         dimensions = input.Study.Mask?.Dimensions ?? 0;
-        Bonferroni = FieldTheory.Bonferroni.Threshold(field, voxels, alpha, Sides);
+        Bonferroni = FieldTheory.Bonferroni.Threshold(field, voxels, alpha, sides);
         Undefined = input.Study.Mask == null ? "no field theory for a table of variables"
-            : input.Resels == null ? input.Smoothness?.Reason ?? "no smoothness, so no field theory"
-            : field.Nu <= dimensions
-                ? $"{field.Nu} degrees of freedom are too few for field theory in {dimensions} dimensions: at least {dimensions + 1} are needed"
+            : input.Resels == null ? $"no field theory: {input.NoSmoothness}"
             : null;
         if (Undefined != null) return;
         resels = input.Resels;
-        (Height, HeightReason) = HeightTheory.Threshold(resels!, field, alpha, Sides);
+        (Height, HeightReason) = HeightTheory.Threshold(resels!, field, alpha, sides);
     }
 
-    /// <summary>s: 2 in direction both, else 1.</summary>
-    public int Sides { get; }
-
-    /// <summary>Why there is no field theory at all; null when there is.</summary>
+    /// <summary>Why there is nothing that field theory could be applied to; null when there is.</summary>
     public string? Undefined { get; }
 
     /// <summary>The field-theory height threshold, in evidence units; null without one.</summary>
@@ -48,16 +43,16 @@ public sealed class ParametricSide
     {
         if (resels == null) return null;
         if (double.IsPositiveInfinity(u)) return 0;
-        double p = HeightTheory.P(resels, field, u, Sides);
+        double p = HeightTheory.P(resels, field, u, sides);
         return double.IsNaN(p) ? null : p;
     }
 
     /// <summary>Bonferroni-adjusted p of a height in evidence units.</summary>
-    public double BonferroniP(double u) => FieldTheory.Bonferroni.P(field, voxels, u, Sides);
+    public double BonferroniP(double u) => FieldTheory.Bonferroni.P(field, voxels, u, sides);
 
     /// <summary>The p in each tail of a forming value.</summary>
     public double TailP(double u) => field.UpperTail(u);
 
     /// <summary>The extent theory at forming value <paramref name="u"/>; null without a theory.</summary>
-    public ExtentTheory? Extent(double u) => resels == null ? null : new ExtentTheory(resels, field, voxels, dimensions, u, Sides);
+    public ExtentTheory? Extent(double u) => resels == null ? null : new ExtentTheory(resels, field, voxels, dimensions, u, sides);
 }

@@ -9,8 +9,7 @@ internal static class SmoothnessChecks
 
     public static IEnumerable<CheckSummary> Of(InferenceInput input, ParametricSide theory)
     {
-        if (input.FwhmVoxels is { } fwhm && fwhm.Where(f => !double.IsNaN(f)).DefaultIfEmpty(double.NaN).Min() is var least && !double.IsNaN(least))
-            yield return Low(least);
+        if (input.UsedFwhm.Min() is { } least) yield return Low(least);
         if (theory.Height is { } height) yield return AgainstBonferroni(height, theory.Bonferroni);
         if (input.Smoothness is not { } smoothness) yield break;
         if (LongTail(smoothness) is { } tail) yield return tail;
@@ -34,8 +33,7 @@ internal static class SmoothnessChecks
     internal static CheckSummary? LongTail(SmoothnessEstimate smoothness)
     {
         double worst = new[] { smoothness.Lag2Fwhm, smoothness.Lag3Fwhm }
-            .Where(lag => lag != null)
-            .SelectMany(lag => lag!.Zip(smoothness.FwhmVoxels, (far, near) => far / near ?? double.NaN))
+            .SelectMany(lag => lag.Zip(smoothness.FwhmVoxels, (far, near) => far / near ?? double.NaN))
             .Where(double.IsFinite).DefaultIfEmpty(double.NaN).Max();
         if (double.IsNaN(worst)) return null;
         return Check.Of("autocorrelation-long-tailed", worst > TailLimit ? Check.Caution : Check.Good, worst, TailLimit,
@@ -47,7 +45,8 @@ internal static class SmoothnessChecks
 
     internal static CheckSummary? Uneven(SmoothnessEstimate smoothness)
     {
-        if (smoothness.UnevennessCv is not { } spread || smoothness.ExpectedCv is not { } expected || !(expected > 0)) return null;
+        var (spread, expected) = (smoothness.UnevennessCv, smoothness.ExpectedCv);
+        if (!double.IsFinite(spread) || !(expected > 0)) return null;
         double limit = UnevenLimit * expected;
         return Check.Of("smoothness-uneven", spread > limit ? Check.Caution : Check.Good, spread, limit,
             $"Hayasaka, Phan, Liberzon, Worsley & Nichols 2004, NeuroImage 22:676–687; {Check.OurLimit}",
