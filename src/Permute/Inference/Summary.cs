@@ -367,6 +367,9 @@ public sealed record VariableSummary
     /// <summary>Signed T.</summary>
     public required double Value { get; init; }
 
+    /// <summary>The effect's size: a mean, a difference of means, a slope.</summary>
+    public double? Estimate { get; init; }
+
     /// <summary>+1 or −1.</summary>
     public required int Sign { get; init; }
 
