@@ -53,6 +53,7 @@ public unsafe class KernelBenchmarks : IDisposable
         sums?.Dispose();
         packed?.Dispose();
         work?.Dispose();
+        GC.SuppressFinalize(this);
         NativeMemory.AlignedFree(floor);
         NativeMemory.AlignedFree(places);
         NativeMemory.AlignedFree(words);
