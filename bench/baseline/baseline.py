@@ -173,7 +173,7 @@ def run_forked_job(chunk):
     return forked_job(chunk)
 
 
-def choose(ways, seconds, rounds=5):
+def choose(ways, seconds, rounds=3):
     """The way with the smallest median time; rounds interleave, so that a busy spell hits all ways alike."""
     times = np.array([[seconds(way) for way in ways] for _ in range(rounds)])
     return ways[int(np.argmin(np.median(times, axis=0)))]
@@ -274,7 +274,7 @@ def main():
         except ValueError:
             parser.error(f"--forming-r needs numbers separated by commas, but was '{args.forming_r}'.")
         job = Extents(mask, U, thresholds)
-        way = choose(EXTENT_WAYS, lambda w: extent(S[:64], job, w, args.threads, blas)[1])
+        way = choose(EXTENT_WAYS, lambda w: extent(S[:32], job, w, args.threads, blas)[1])
         runs = [extent(S, job, way, args.threads, blas) for _ in range(args.repeat)]
         found = runs[0][0][:5]
         result.update(way=way, max=(S[:5] @ U).max(axis=1).tolist(), extent=found[:, 0].tolist(),
