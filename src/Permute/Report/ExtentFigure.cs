@@ -25,7 +25,7 @@ internal static class ExtentFigure
         (up.Position, up.Minimum, up.Maximum, up.StringFormat) = (AxisPosition.Left, floor, ceiling, "#,0.##");
         (up.MajorGridlineStyle, up.MajorGridlineColor) = (LineStyle.Solid, FigureStyle.Faint);
         model.Axes.Add(FigureStyle.Styled(up, log ? "extent, voxels (logarithmic)" : "extent, voxels"));
-        var across = new CategoryAxis { Position = AxisPosition.Bottom, MajorTickSize = 0 };
+        var across = new CategoryAxis { Position = AxisPosition.Bottom, MajorTickSize = 0, Minimum = -0.75, Maximum = entries.Count - 0.25 };
         across.Labels.AddRange(entries.Select(e => Label(e)));
         model.Axes.Add(FigureStyle.Styled(across, s.Model.Direction == "both" ? "cluster-forming threshold (p two-sided)" : "cluster-forming threshold"));
         model.Legends.Add(new Legend
