@@ -6,12 +6,6 @@ using Permute.Inference;
 
 namespace Permute;
 
-/// <summary>How far a long step has come.</summary>
-/// <param name="Stage">"reading images", "relabelings", "writing".</param>
-/// <param name="Done">Units done (relabelings count fractions of a chunk).</param>
-/// <param name="Total">Units in all.</param>
-public sealed record AnalysisProgress(string Stage, double Done, double Total);
-
 /// <summary>The three steps of an analysis over one run folder: prepare, work, finish; and all of them in one go.</summary>
 public static class Analysis
 {

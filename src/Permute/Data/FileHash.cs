@@ -9,8 +9,8 @@ internal static class FileHash
     public static Dictionary<string, string> Of(string name, string path)
     {
         var hashes = new Dictionary<string, string> { [name] = Hash(path) };
-        string other = OtherHalf(path);
-        if (other != path && File.Exists(other)) hashes[OtherHalf(name)] = Hash(other);
+        if (ImagePaths.OtherHalves(path).FirstOrDefault(File.Exists) is string other)
+            hashes[Path.Combine(Path.GetDirectoryName(name) ?? "", Path.GetFileName(other))] = Hash(other);
         return hashes;
     }
 
@@ -18,12 +18,5 @@ internal static class FileHash
     {
         using var stream = new FileStream(path, FileMode.Open, FileAccess.Read, FileShare.Read, 1 << 18, FileOptions.SequentialScan);
         return Convert.ToHexStringLower(SHA256.HashData(stream));
-    }
-
-    private static string OtherHalf(string path)
-    {
-        string gz = path.EndsWith(".gz", StringComparison.Ordinal) ? ".gz" : "", stem = path[..^gz.Length];
-        return stem.EndsWith(".hdr", StringComparison.Ordinal) ? stem[..^4] + ".img" + gz
-            : stem.EndsWith(".img", StringComparison.Ordinal) ? stem[..^4] + ".hdr" + gz : path;
     }
 }

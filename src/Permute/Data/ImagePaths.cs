@@ -23,13 +23,23 @@ internal static class ImagePaths
         return [.. found.Order(StringComparer.Ordinal)];
     }
 
-    /// <summary>One key per file on disk: the full path, header and image of a pair being one.</summary>
+    /// <summary>One key per image on disk: the full path, header and voxels of a pair being one, packed or not.</summary>
     public static string Key(string path)
     {
         string full = Path.GetFullPath(path);
-        return full.EndsWith(".img", StringComparison.Ordinal) ? full[..^4] + ".hdr"
-            : full.EndsWith(".img.gz", StringComparison.Ordinal) ? full[..^7] + ".hdr.gz" : full;
+        return OtherHalves(full) is [var other, ..] ? string.CompareOrdinal(Bare(full), other) < 0 ? Bare(full) : other : full;
     }
+
+    /// <summary>Where the other half of a header/image pair may be (name.img for name.hdr and the reverse, then the same packed); empty for other files.</summary>
+    public static string[] OtherHalves(string path)
+    {
+        string bare = Bare(path);
+        foreach (var (from, to) in new[] { (".hdr", ".img"), (".img", ".hdr"), (".HDR", ".IMG"), (".IMG", ".HDR") })
+            if (bare.EndsWith(from, StringComparison.Ordinal)) return [bare[..^4] + to, bare[..^4] + to + ".gz"];
+        return [];
+    }
+
+    private static string Bare(string path) => path.EndsWith(".gz", StringComparison.OrdinalIgnoreCase) ? path[..^3] : path;
 
     /// <summary>File names, with as many folders before them as it takes to tell them apart.</summary>
     public static IReadOnlyList<string> ShortNames(IReadOnlyList<string> paths)

@@ -42,7 +42,11 @@ public sealed class RelabelingPlan
     /// <summary>Relabeling <paramref name="index"/>: design row and sign of each image.</summary>
     public void Arrange(int index, Span<int> rows, Span<sbyte> sign)
     {
-        if (index == 0 || order != null) Family.Unrank(index == 0 ? 0 : 1 + order!.At(index - 1), rows, sign);
+        if (index == 0)
+        {
+            for (int i = 0; i < rows.Length; i++) (rows[i], sign[i]) = (i, 1);
+        }
+        else if (order != null) Family.Unrank(1 + order.At(index - 1), rows, sign);
         else
         {
             var random = new Philox(Seed, index);

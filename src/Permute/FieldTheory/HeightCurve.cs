@@ -6,6 +6,7 @@ internal sealed class HeightCurve
     // Even steps of asinh v: fine about 1, where the turning points are, yet 10¹² is only 600 steps away.
     private const double Step = 0.05;
     private const double Farthest = 1e15;
+    private const double Smallest = 1e-12; // the densities of F and chi-square may be infinite at 0 itself
     private readonly List<(double V, double Ec)> peaks = [];
 
     /// <summary>The curve of <paramref name="field"/> on a region of <paramref name="resels"/>.</summary>
@@ -16,7 +17,7 @@ internal sealed class HeightCurve
         for (int i = 2; Math.Sinh(i * Step) < Farthest; i++)
         {
             double after = Ec(Math.Sinh(i * Step));
-            if (after == 0 && here == 0) break;
+            if (after == 0 && Field.UpperTail(Math.Sinh(i * Step)) == 0) break;
             if (here >= before && here > after) peaks.Add(Top(Math.Sinh((i - 2) * Step), Math.Sinh(i * Step)));
             (before, here) = (here, after);
         }
@@ -38,7 +39,7 @@ internal sealed class HeightCurve
     }
 
     /// <summary>min(1, sup over v ≥ u of sides × E[EC](v)), not below 0.</summary>
-    public double P(double u, int sides) => Math.Clamp(sides * Supremum(u), 0, 1);
+    public double P(double u, int sides) => double.IsPositiveInfinity(u) ? 0 : Math.Clamp(sides * Supremum(u), 0, 1);
 
     /// <summary>The smallest u ≥ 0 with p(u) ≤ alpha: the last place where the curve comes down through it. Null when it never does.</summary>
     public double? Threshold(double alpha, int sides)
@@ -54,17 +55,15 @@ internal sealed class HeightCurve
             high *= 2;
             if (high > Farthest) return null;
         }
-        return Field.Solve(u => Ec(u) - target, low, high);
+        // In logarithms, so that a small alpha is met as closely as a large one.
+        return Field.Solve(u => Ec(u) is > 0 and var ec ? Math.Log(ec / target) : -1000, low, high);
     }
-
-    // F and chi-square are not defined at 0 itself.
-    private const double Smallest = 1e-12;
 
     private double Ec(double u) => ExpectedEc(Resels, Field, u);
 
     private double Supremum(double u)
     {
-        double best = Ec(u);
+        double best = double.IsNegativeInfinity(u) ? Resels.R0 : Ec(u); // far below, the whole region is above
         foreach (var (v, ec) in peaks) if (v > u) best = Math.Max(best, ec);
         return best;
     }

@@ -49,7 +49,22 @@ public sealed class ImagePathsTests : IDisposable
     }
 
     [Fact]
-    public void The_two_halves_of_a_pair_are_one_image() => Assert.Equal(ImagePaths.Key("/d/a.hdr"), ImagePaths.Key("/d/../d/a.img"));
+    public void The_two_halves_of_a_pair_are_one_image()
+    {
+        Assert.Equal(ImagePaths.Key("/d/a.hdr"), ImagePaths.Key("/d/../d/a.img"));
+        Assert.Equal(ImagePaths.Key("/d/a.hdr"), ImagePaths.Key("/d/a.img.gz"));
+        Assert.NotEqual(ImagePaths.Key("/d/a.nii"), ImagePaths.Key("/d/a.nii.gz"));
+    }
+
+    [Fact]
+    public void Both_halves_of_a_pair_are_hashed()
+    {
+        folder.Text("a.hdr", "header");
+        folder.Text("a.img.gz", "voxels");
+        Assert.Equal(["data/a.hdr", "data/a.img.gz"], FileHash.Of("data/a.hdr", folder.In("a.hdr")).Keys.Order(StringComparer.Ordinal));
+        // Published SHA-256 example: FIPS 180-4, "abc".
+        Assert.Equal("ba7816bf8f01cfea414140de5dae2223b00361a396177a9cb410ff61f20015ad", FileHash.Of("x", folder.Text("x", "abc"))["x"]);
+    }
 
     private string[] Names(string pattern) => [.. ImagePaths.Resolve(folder.In(pattern)).Select(p => Path.GetRelativePath(folder.Path, p))];
 }

@@ -103,7 +103,8 @@ public sealed class StudyReaderTests : IDisposable
             Assert.Equal(one.Mask!.Voxels, other.Mask!.Voxels);
             Assert.Equal(one.Notes, other.Notes);
             Assert.Equal(one.Sha256.OrderBy(p => p.Key), other.Sha256.OrderBy(p => p.Key));
-            for (int i = 0; i < 5; i++) Assert.Equal(one.Data.Hash(i), other.Data.Hash(i));
+            for (int v = 0; v < one.Data.Voxels; v++)
+                for (int i = 0; i < 5; i++) Assert.Equal(one.Data[i, v], other.Data[i, v]);
         }
     }
 
@@ -125,11 +126,43 @@ public sealed class StudyReaderTests : IDisposable
     }
 
     [Fact]
-    public void All_truncated_files_are_named_at_once()
+    public void All_damaged_files_are_named_at_once()
     {
-        string[] paths = folder.Images(4, [8, 8, 8]);
+        string[] paths = [.. Folder.Values(4, 512).Select((v, i) => folder.Image($"{i}.nii.gz", [8, 8, 8], v))];
         foreach (string path in new[] { paths[1], paths[3] }) File.WriteAllBytes(path, File.ReadAllBytes(path)[..^100]);
         Says(Fault(() => Read(new() { Images = paths })), paths[1], paths[3]);
+    }
+
+    [Theory]
+    [InlineData(NiftiType.UInt8, 1, 0, false)]
+    [InlineData(NiftiType.Int16, 1, 0, false)]
+    [InlineData(NiftiType.Int16, 0.1, 3, true)]
+    [InlineData(NiftiType.Float64, 1, 0, true)]
+    [InlineData(NiftiType.Int32, 1, 0, true)]
+    public void Only_values_beyond_single_precision_get_second_parts(NiftiType type, double slope, double intercept, bool second) =>
+        Assert.Equal(!second, ImageLoader.IsExact(NiftiFile.For([2, 2, 2], Folder.Affine(), type) with { Slope = slope, Intercept = intercept }));
+
+    [Fact]
+    public void Scaled_integers_arrive_exactly()
+    {
+        double[][] values = Folder.Values(3, 27);
+        string[] paths = [.. values.Select((v, i) => folder.In($"{i}.nii"))];
+        for (int i = 0; i < 3; i++)
+            NiftiFile.Write(paths[i], NiftiFile.For([3, 3, 3], Folder.Affine(), NiftiType.Int16) with { Slope = 0.1f, Intercept = 3 }, [.. values[i].Select(v => v * (double)0.1f + 3)]);
+        using var study = Read(new() { Images = paths });
+        for (int v = 0; v < 27; v++)
+            for (int i = 0; i < 3; i++) Assert.Equal(values[i][v] * (double)0.1f + 3, study.Data[i, v], 1e-13);
+    }
+
+    [Theory]
+    [InlineData(1e-40)]
+    [InlineData(1e37)]
+    public void Images_beyond_single_range_ask_for_another_unit(double unit)
+    {
+        string[] paths = folder.Images(3, [4, 4, 4], all => { Scale([all[0]], unit); Scale([all[2]], unit); all[1][3] = double.NaN; }, NiftiType.Float64);
+        string message = Fault(() => Read(new() { Images = paths }));
+        Assert.Equal(2, message.Split('\n').Length);
+        Says(message, paths[0], paths[2], "unit");
     }
 
     [Fact]

@@ -1,0 +1,7 @@
+namespace Permute;
+
+/// <summary>How far a long step has come.</summary>
+/// <param name="Stage">"reading images", "relabelings", "writing".</param>
+/// <param name="Done">Units done (relabelings count fractions of a chunk).</param>
+/// <param name="Total">Units in all.</param>
+public sealed record AnalysisProgress(string Stage, double Done, double Total);
