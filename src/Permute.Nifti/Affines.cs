@@ -1,16 +1,24 @@
 namespace Permute.Nifti;
 
-/// <summary>The three ways in which the standard places voxels in space (nifti1.h, "3D IMAGE (VOLUME) ORIENTATION AND LOCATION IN SPACE").</summary>
+/// <summary>
+/// The three ways in which the standard places voxels in space (nifti1.h, "3D IMAGE (VOLUME) ORIENTATION AND LOCATION IN SPACE").
+/// </summary>
 internal static class Affines
 {
-    /// <summary>How far the axes may be from perpendicular, as a cosine, for an affine to be called a rotation and scaling: the rounding of single precision.</summary>
+    /// <summary>
+    /// How far the axes may be from perpendicular, as a cosine, for an affine to be called a rotation and scaling: the rounding of single
+    /// precision.
+    /// </summary>
     private const double Perpendicular = 1e-5;
 
     /// <summary>Method 1: a scaling, no origin.</summary>
     public static double[,] Scaling(double x, double y, double z) =>
         new[,] { { x, 0, 0, 0 }, { 0, y, 0, 0 }, { 0, 0, z, 0 }, { 0, 0, 0, 1.0 } };
 
-    /// <summary>Method 2: the rotation of a unit quaternion (a ≥ 0 is implied by b, c, d), spacings, and an offset; <paramref name="qfac"/> −1 reverses the third axis.</summary>
+    /// <summary>
+    /// Method 2: the rotation of a unit quaternion (a ≥ 0 is implied by b, c, d), spacings, and an offset; <paramref name="qfac"/> −1
+    /// reverses the third axis.
+    /// </summary>
     public static double[,] FromQuaternion(double[] bcd, double[] offset, double[] spacing, double qfac)
     {
         double b = bcd[0], c = bcd[1], d = bcd[2], square = b * b + c * c + d * d;

@@ -3,7 +3,10 @@ using System.IO.Compression;
 
 namespace Permute.Nifti;
 
-/// <summary>A file's bytes in order, unpacked on the way if they are gzip (by their first two bytes, not by the name). Faults of reading become <see cref="NiftiException"/>.</summary>
+/// <summary>
+/// A file's bytes in order, unpacked on the way if they are gzip (by their first two bytes, not by the name). Faults of reading become
+/// <see cref="NiftiException"/>.
+/// </summary>
 internal sealed class ByteSource : IDisposable
 {
     /// <summary>Deflate never packs tighter: a match of 258 bytes costs at least two bits (RFC 1951).</summary>
@@ -21,7 +24,9 @@ internal sealed class ByteSource : IDisposable
     /// <summary>True if the bytes are unpacked on the way.</summary>
     public bool IsGzip { get; }
 
-    /// <summary>Opens <paramref name="path"/>, which is needed to read the image named <paramref name="image"/>: the same file or its partner.</summary>
+    /// <summary>
+    /// Opens <paramref name="path"/>, which is needed to read the image named <paramref name="image"/>: the same file or its partner.
+    /// </summary>
     public static ByteSource Open(string path, string image)
     {
         if (Directory.Exists(path)) throw new NiftiException($"{path}: is a folder; name an image file instead.");
@@ -29,7 +34,8 @@ internal sealed class ByteSource : IDisposable
         try
         {
             file = new FileStream(path, FileMode.Open, FileAccess.Read, FileShare.Read, 1 << 16, FileOptions.SequentialScan);
-            if (file.Length == 0) throw new NiftiException($"{path}: is empty (0 bytes); expected a NIfTI image, so fetch or write the file again.");
+            if (file.Length == 0)
+                throw new NiftiException($"{path}: is empty (0 bytes); expected a NIfTI image, so fetch or write the file again.");
             bool isGzip = file.ReadByte() == 0x1f && file.ReadByte() == 0x8b;
             file.Position = 0;
             return new(path, isGzip ? new GZipStream(file, CompressionMode.Decompress) : file, file.Length, isGzip);
@@ -82,7 +88,8 @@ internal sealed class ByteSource : IDisposable
         if (!IsGzip && length < promised) throw Truncated(promised, length);
         if (IsGzip && length < promised / MostPacked)
             throw new NiftiException(
-                $"{Path}: truncated: header promises {promised} bytes, which gzip cannot pack into the file's {length}; fetch or write the file again.");
+                $"{Path}: truncated: header promises {promised} bytes, which gzip cannot pack into the file's {length}; fetch or "
+                    + "write the file again.");
     }
 
     /// <summary>After the last byte asked for: lets gzip compare its checksum, if the data end here.</summary>
@@ -93,7 +100,8 @@ internal sealed class ByteSource : IDisposable
 
     /// <summary>The error for bytes that ended early.</summary>
     public NiftiException Truncated(long promised, long found) =>
-        new($"{Path}: truncated: header promises {promised} bytes, the file has {found}{(IsGzip ? " after unpacking" : "")}; fetch or write the file again.");
+        new($"{Path}: truncated: header promises {promised} bytes, the file has {found}{(IsGzip ? " after unpacking" : "")}; fetch "
+            + "or write the file again.");
 
     public void Dispose() => stream.Dispose();
 

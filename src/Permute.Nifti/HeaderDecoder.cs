@@ -40,18 +40,22 @@ internal static class HeaderDecoder
     {
         if (fields.Magic == $"n+{version}" || fields.Magic == $"ni{version}") return;
         throw new NiftiException(version == 1 && fields.Magic is not ("n+2" or "ni2")
-            ? $"{path}: has no NIfTI magic (n+1 or ni1), so it is an ANALYZE 7.5 file, which does not say which side is left, or damaged; convert it to NIfTI with a program that knows its orientation."
-            : $"{path}: has a header of NIfTI-{version}'s size but not its magic (n+{version} or ni{version}); the file is damaged, so fetch or write it again.");
+            ? $"{path}: has no NIfTI magic (n+1 or ni1), so it is an ANALYZE 7.5 file, which does not say which side is left, or "
+                + "damaged; convert it to NIfTI with a program that knows its orientation."
+            : $"{path}: has a header of NIfTI-{version}'s size but not its magic (n+{version} or ni{version}); the file is damaged, "
+                + "so fetch or write it again.");
     }
 
     private static long[] Dimensions(NiftiFields fields, string path)
     {
         long count = fields.Dim[0];
         if (count is < 1 or > 7)
-            throw new NiftiException($"{path}: says it has {count} dimensions (dim[0]), but NIfTI allows 1 to 7; the header is damaged, so write the file anew.");
+            throw new NiftiException($"{path}: says it has {count} dimensions (dim[0]), but NIfTI allows 1 to 7; the header is "
+                + "damaged, so write the file anew.");
         for (int i = 1; i <= count; i++)
             if (fields.Dim[i] < 1)
-                throw new NiftiException($"{path}: dimension {i} has length {fields.Dim[i]} (dim[{i}]), but a length is at least 1; the header is damaged, so write the file anew.");
+                throw new NiftiException($"{path}: dimension {i} has length {fields.Dim[i]} (dim[{i}]), but a length is at least 1; "
+                    + "the header is damaged, so write the file anew.");
 
         var lengths = fields.Dim.Skip(1).Take((int)count).ToList();
         while (lengths.Count < 3) lengths.Add(1);
@@ -65,7 +69,8 @@ internal static class HeaderDecoder
         int first = !single ? 0 : version == 1 ? LayoutV1.FirstVoxel : LayoutV2.FirstVoxel;
         double offset = fields.VoxOffset;
         if (offset >= first && offset < 1L << 62 && offset == Math.Floor(offset)) return (long)offset;
-        throw new NiftiException($"{path}: says its voxels begin at byte {offset} (vox_offset), but expected a whole number from {first} on; the header is damaged, so write the file anew.");
+        throw new NiftiException($"{path}: says its voxels begin at byte {offset} (vox_offset), but expected a whole number from "
+            + $"{first} on; the header is damaged, so write the file anew.");
     }
 
     private static void CheckSize(long[] dimensions, NiftiType type, long offset, string path)
@@ -76,7 +81,8 @@ internal static class HeaderDecoder
         }
         catch (OverflowException e)
         {
-            throw new NiftiException($"{path}: its dimensions {string.Join(" × ", dimensions)} multiply to more bytes than any file holds; the header is damaged, so write the file anew.", e);
+            throw new NiftiException($"{path}: its dimensions {string.Join(" × ", dimensions)} multiply to more bytes than any file "
+                + "holds; the header is damaged, so write the file anew.", e);
         }
     }
 
@@ -84,7 +90,8 @@ internal static class HeaderDecoder
     {
         if (fields.SclSlope == 0 || !double.IsFinite(fields.SclSlope)) return (1, 0);
         if (double.IsFinite(fields.SclInter)) return (fields.SclSlope, fields.SclInter);
-        throw new NiftiException($"{path}: scales its voxels by {fields.SclSlope} and then adds {fields.SclInter} (scl_inter), but expected a finite number; write the file anew.");
+        throw new NiftiException($"{path}: scales its voxels by {fields.SclSlope} and then adds {fields.SclInter} (scl_inter), but "
+            + "expected a finite number; write the file anew.");
     }
 
     private static double[,] Affine(NiftiFields fields, long[] dimensions, double mm, string path)
@@ -100,10 +107,12 @@ internal static class HeaderDecoder
             for (int c = 0; c < 4; c++) affine[r, c] *= mm;
         double[] lengths = Affines.Spacing(affine);
         if (affine.Cast<double>().All(double.IsFinite) && !lengths.Where((v, i) => v == 0 && dimensions[i] > 1).Any()) return affine;
-        throw new NiftiException($"{path}: its {source} does not place the voxels in space (it holds a number that is not finite, or lays all voxels of an axis on one spot); correct the header.");
+        throw new NiftiException($"{path}: its {source} does not place the voxels in space (it holds a number that is not finite, "
+            + "or lays all voxels of an axis on one spot); correct the header.");
     }
 
-    // A spacing of 0 or none stands in files of one slice; the standard's own code takes 1 for it. A sign tells nothing here: directions are the quaternion's.
+    // A spacing of 0 or none stands in files of one slice; the standard's own code takes 1 for it. A sign tells nothing here: directions
+    // are the quaternion's.
     private static double Spacing(double pixdim) => pixdim != 0 && double.IsFinite(pixdim) ? Math.Abs(pixdim) : 1;
 
     // xyzt_units, bits 0-2. Unknown is taken as mm, the common practice (no source).

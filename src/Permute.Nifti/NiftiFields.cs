@@ -57,6 +57,6 @@ public sealed record NiftiFields
     /// <summary><c>qoffset_x, qoffset_y, qoffset_z</c>.</summary>
     public double[] Qoffset { get; init; } = [0, 0, 0];
 
-    /// <summary><c>srow_x, srow_y, srow_z</c>: 3 × 4.</summary>
+    /// <summary><c>srow_x, srow_y, srow_z</c>: the first three rows of an affine.</summary>
     public double[,] Srow { get; init; } = new double[3, 4];
 }

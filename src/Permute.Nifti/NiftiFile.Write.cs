@@ -32,23 +32,28 @@ public static partial class NiftiFile
     }
 
     /// <summary>
-    /// Writes a little-endian NIfTI-1 single file. It is written aside, flushed to the disk and then given its name, so that the name never stands
-    /// for half a file. The sform is <see cref="NiftiHeader.Affine"/>, with the header's code or 1; the qform says the same where it can. Floating
-    /// types are stored unscaled; integers by the header's slope and intercept, rounded to the nearest. Equal input gives equal bytes.
+    /// Writes a little-endian NIfTI-1 single file. It is written aside, flushed to the disk and then given its name, so that the name
+    /// never stands for half a file. The sform is <see cref="NiftiHeader.Affine"/>, with the header's code or 1; the qform says the same
+    /// where it can. Floating types are stored unscaled; integers by the header's slope and intercept, rounded to the nearest. Equal input
+    /// gives equal bytes.
     /// </summary>
     /// <param name="path">Ends in .nii, or in .nii.gz to be packed.</param>
     /// <param name="header">What to say; <see cref="NiftiHeader.Stored"/>, version, byte order and offset are of no account.</param>
     /// <param name="values">One value per voxel, x fastest. In Float32 a finite value beyond its range becomes infinite.</param>
-    /// <exception cref="NiftiException">Another ending, a dimension above 32,767, a value that the integer type cannot hold, or a disk that refuses.</exception>
+    /// <exception cref="NiftiException">
+    /// Another ending, a dimension above 32,767, a value that the integer type cannot hold, or a disk that refuses.
+    /// </exception>
     public static void Write(string path, NiftiHeader header, ReadOnlySpan<double> values)
     {
         ArgumentException.ThrowIfNullOrEmpty(path);
         bool gzip = path.EndsWith(".nii.gz", StringComparison.OrdinalIgnoreCase);
         if (!gzip && !path.EndsWith(".nii", StringComparison.OrdinalIgnoreCase))
-            throw new NiftiException($"{path}: cannot be written under this name, because images are written as .nii or .nii.gz; choose one of these endings.");
+            throw new NiftiException($"{path}: cannot be written under this name, because images are written as .nii or .nii.gz; "
+                + "choose one of these endings.");
         CheckDimensions(header.Dimensions);
         if (header.Dimensions.Any(d => d > Longest))
-            throw new NiftiException($"{path}: cannot be written as NIfTI-1, whose dimensions have at most {Longest} voxels, but one here has {header.Dimensions.Max()}; split the image.");
+            throw new NiftiException($"{path}: cannot be written as NIfTI-1, whose dimensions have at most {Longest} voxels, but "
+                + $"one here has {header.Dimensions.Max()}; split the image.");
         if (values.Length != header.VoxelCount)
             throw new ArgumentException($"{values.Length} values for an image of {header.VoxelCount} voxels.", nameof(values));
 
@@ -79,7 +84,8 @@ public static partial class NiftiFile
     private static void CheckDimensions(long[] dimensions)
     {
         if (dimensions.Length is < 1 or > 7 || dimensions.Any(d => d < 1))
-            throw new ArgumentException($"Dimensions {string.Join(" × ", dimensions)}: expected one to seven lengths of at least 1.", nameof(dimensions));
+            throw new ArgumentException($"Dimensions {string.Join(" × ", dimensions)}: expected one to seven lengths of at least "
+                + "1.", nameof(dimensions));
     }
 
     private static void TryDelete(string path)

@@ -4,7 +4,8 @@ namespace Permute.Nifti;
 
 /// <summary>
 /// Reads NIfTI-1 and NIfTI-2 images (single file or header/image pair, gzip, both byte orders, all real scalar types) and writes NIfTI-1.
-/// Standard: nifti1.h (2004) and nifti2.h (2011) of the NIfTI Data Format Working Group. Every fault of a file is a <see cref="NiftiException"/>.
+/// Standard: nifti1.h (2004) and nifti2.h (2011) of the NIfTI Data Format Working Group. Every fault of a file is a
+/// <see cref="NiftiException"/>.
 /// </summary>
 public static partial class NiftiFile
 {
@@ -18,8 +19,8 @@ public static partial class NiftiFile
     public delegate void VoxelSink(NiftiHeader header, long offset, ReadOnlySpan<double> values);
 
     /// <summary>
-    /// The header of an image, without reading its voxels; <paramref name="path"/> may name either file of a pair. That the file is long enough
-    /// for its voxels is checked as far as its length tells, so room may be made for <see cref="NiftiHeader.VoxelCount"/> voxels.
+    /// The header of an image, without reading its voxels; <paramref name="path"/> may name either file of a pair. That the file is long
+    /// enough for its voxels is checked as far as its length tells, so room may be made for <see cref="NiftiHeader.VoxelCount"/> voxels.
     /// </summary>
     /// <exception cref="NiftiException">The file is missing, damaged, too short, or not an image of real numbers.</exception>
     public static NiftiHeader ReadHeader(string path)
@@ -31,7 +32,9 @@ public static partial class NiftiFile
 
     /// <summary>Hands all voxels to <paramref name="sink"/>, in order, in slabs of up to 65,536; never holds more than one slab.</summary>
     /// <returns>The header.</returns>
-    /// <exception cref="NiftiException">As <see cref="ReadHeader"/>, or the voxels end early or are damaged. The sink may have seen some by then.</exception>
+    /// <exception cref="NiftiException">
+    /// As <see cref="ReadHeader"/>, or the voxels end early or are damaged. The sink may have seen some by then.
+    /// </exception>
     public static NiftiHeader Read(string path, VoxelSink sink)
     {
         var (header, voxels) = Open(path);
@@ -47,14 +50,15 @@ public static partial class NiftiFile
         using (voxels)
         {
             if (header.VoxelCount > Array.MaxLength)
-                throw new NiftiException($"{path}: has {header.VoxelCount} voxels, and at most {Array.MaxLength} can be held at once; split the image.");
+                throw new NiftiException($"{path}: has {header.VoxelCount} voxels, and at most {Array.MaxLength} can be held at "
+                    + "once; split the image.");
             var all = new double[header.VoxelCount];
             Stream(header, voxels, (_, offset, values) => values.CopyTo(all.AsSpan((int)offset)));
             return (header, all);
         }
     }
 
-    /// <summary>The header, and the source of the voxels, standing at the first of them or, in a single file, at the end of the header.</summary>
+    /// <summary>The header, and the source of the voxels, standing at the first of them.</summary>
     private static (NiftiHeader Header, ByteSource Voxels) Open(string path)
     {
         ArgumentException.ThrowIfNullOrEmpty(path);
@@ -71,7 +75,8 @@ public static partial class NiftiFile
                 passed = 0;
             }
             else if (source.Path != path)
-                throw new NiftiException($"{path}: its header, {source.Path}, says that the voxels are in one file with it (magic n+1 or n+2); name that file with the ending .nii.");
+                throw new NiftiException($"{path}: its header, {source.Path}, says that the voxels are in one file with it (magic "
+                    + "n+1 or n+2); name that file with the ending .nii.");
             source.RequireRoomFor(End(header));
             source.Skip(header.DataOffset - passed);
             return (header, source);

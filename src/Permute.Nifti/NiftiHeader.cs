@@ -12,11 +12,14 @@ public sealed record NiftiHeader
     /// <summary>True if the file's numbers have their high byte first. Writing is always little-endian.</summary>
     public bool BigEndian { get; init; }
 
-    /// <summary>Length along each dimension, x first: at least three entries, missing ones 1; beyond three, trailing ones of length 1 are left out.</summary>
+    /// <summary>
+    /// Length along each dimension, x first: at least three entries, missing ones 1; beyond three, trailing ones of length 1 are left out.
+    /// </summary>
     public long[] Dimensions { get; init; } = [1, 1, 1];
 
     /// <summary>
-    /// <c>pixdim</c> of each entry of <see cref="Dimensions"/>; the first three in mm whatever <c>xyzt_units</c> says, the fourth in its time unit.
+    /// <c>pixdim</c> of each entry of <see cref="Dimensions"/>; the first three in mm whatever <c>xyzt_units</c> says, the fourth in its
+    /// time unit.
     /// </summary>
     public double[] VoxelSize { get; init; } = [1, 1, 1];
 
@@ -33,8 +36,8 @@ public sealed record NiftiHeader
     public long DataOffset { get; init; } = 352;
 
     /// <summary>
-    /// 4 × 4, zero-based voxel indices (x, y, z, 1) to mm: the sform if its code is above 0, else the qform if its code is, else plain scaling by
-    /// pixdim without an origin ("method 1" of nifti1.h).
+    /// 4 × 4, zero-based voxel indices (x, y, z, 1) to mm: the sform if its code is above 0, else the qform if its code is, else plain
+    /// scaling by pixdim without an origin ("method 1" of nifti1.h).
     /// </summary>
     public double[,] Affine { get; init; } = Affines.Scaling(1, 1, 1);
 

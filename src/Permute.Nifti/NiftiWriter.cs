@@ -47,7 +47,7 @@ internal static class NiftiWriter
         {
             Magic = "n+1",
             Dim = [rank, .. Enumerable.Range(0, 7).Select(i => i < rank ? header.Dimensions[i] : 1)],
-            Pixdim = [quaternion?.Qfac ?? 1, .. spacing, .. Enumerable.Range(3, 4).Select(i => i < header.VoxelSize.Length ? header.VoxelSize[i] : 1)],
+            Pixdim = [quaternion?.Qfac ?? 1, .. spacing, .. header.VoxelSize.Skip(3).Concat([1, 1, 1, 1]).Take(4)],
             Datatype = (short)header.Type,
             Bitpix = (short)(8 * header.Type.Bytes()),
             VoxOffset = LayoutV1.FirstVoxel,
@@ -62,7 +62,7 @@ internal static class NiftiWriter
             QformCode = quaternion == null ? 0 : code,
             Quatern = quaternion?.Bcd ?? [0, 0, 0],
             Qoffset = quaternion == null ? [0, 0, 0] : [a[0, 3], a[1, 3], a[2, 3]],
-            Srow = new[,] { { a[0, 0], a[0, 1], a[0, 2], a[0, 3] }, { a[1, 0], a[1, 1], a[1, 2], a[1, 3] }, { a[2, 0], a[2, 1], a[2, 2], a[2, 3] } },
+            Srow = a,
         };
     }
 }

@@ -7,7 +7,9 @@ namespace Permute.Nifti;
 /// <summary>From stored bytes to values: byte order, type, slope and intercept.</summary>
 internal static class VoxelDecoder
 {
-    /// <summary>Decodes as many voxels as <paramref name="to"/> holds. <paramref name="bytes"/> are put into this machine's order in place.</summary>
+    /// <summary>
+    /// Decodes as many voxels as <paramref name="to"/> holds. <paramref name="bytes"/> are put into this machine's order in place.
+    /// </summary>
     public static void Decode(NiftiHeader header, Span<byte> bytes, Span<double> to)
     {
         if (header.BigEndian == BitConverter.IsLittleEndian) Reverse(bytes, header.Type.Bytes());

@@ -3,7 +3,9 @@ using System.Numerics;
 
 namespace Permute.Nifti;
 
-/// <summary>From values to stored little-endian bytes. Integers are rounded to the nearest; what their type cannot hold is refused, never clipped.</summary>
+/// <summary>
+/// From values to stored little-endian bytes. Integers are rounded to the nearest; what their type cannot hold is refused, never clipped.
+/// </summary>
 internal static class VoxelEncoder
 {
     /// <summary>Encodes every value; <paramref name="first"/> is the linear index of the first one, for the error.</summary>
@@ -23,13 +25,15 @@ internal static class VoxelEncoder
             _ => Doubles(values, to),
         };
         if (refused is { } i)
-            throw new NiftiException($"{path}: voxel {first + i} has the value {values[(int)i]}, which {header.Type} with slope {header.Slope} and intercept {header.Intercept} cannot hold; choose another voxel type.");
+            throw new NiftiException($"{path}: voxel {first + i} has the value {values[(int)i]}, which {header.Type} with slope "
+                + $"{header.Slope} and intercept {header.Intercept} cannot hold; choose another voxel type.");
     }
 
     private static long? Integers<T>(NiftiHeader header, ReadOnlySpan<double> values, Span<byte> to)
         where T : unmanaged, IBinaryInteger<T>, IMinMaxValue<T>
     {
-        double least = double.CreateTruncating(T.MinValue), beyond = double.CreateTruncating(T.MaxValue) + 1; // for 64 bits already rounded up
+        double least = double.CreateTruncating(T.MinValue);
+        double beyond = double.CreateTruncating(T.MaxValue) + 1; // for 64 bits the maximum is already rounded up
         int width = T.Zero.GetByteCount();
         for (int i = 0; i < values.Length; i++)
         {

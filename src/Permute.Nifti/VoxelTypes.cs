@@ -22,11 +22,14 @@ internal static class VoxelTypes
         var type = (NiftiType)fields.Datatype;
         if (!Enum.IsDefined(type))
             throw new NiftiException(Refused(fields.Datatype) is { } name
-                ? $"{path}: holds {name} voxels (datatype {fields.Datatype}), but only real numbers of up to 64 bits can be read; convert the image to float32 first."
-                : $"{path}: datatype {fields.Datatype} is not a voxel type of the NIfTI standard; the header is damaged or the file was not written as NIfTI.");
+                ? $"{path}: holds {name} voxels (datatype {fields.Datatype}), but only real numbers of up to 64 bits can be read; "
+                    + "convert the image to float32 first."
+                : $"{path}: datatype {fields.Datatype} is not a voxel type of the NIfTI standard; the header is damaged or the file "
+                    + "was not written as NIfTI.");
         if (fields.Bitpix != 8 * type.Bytes())
             throw new NiftiException(
-                $"{path}: the header contradicts itself: datatype {fields.Datatype} ({type}) has {8 * type.Bytes()} bits per voxel, but bitpix says {fields.Bitpix}; write the file anew.");
+                $"{path}: the header contradicts itself: datatype {fields.Datatype} ({type}) has {8 * type.Bytes()} bits per voxel, "
+                    + $"but bitpix says {fields.Bitpix}; write the file anew.");
         return type;
     }
 

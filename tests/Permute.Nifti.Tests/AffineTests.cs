@@ -5,9 +5,13 @@ namespace Permute.Nifti.Tests;
 /// <summary>Placement in space: the qform written must place voxels where the sform does (nifti1.h, methods 2 and 3).</summary>
 public class AffineTests
 {
-    /// <summary>Rotation by angles about x, y and z, spacing 2, 3, 4 mm, any axis reversed: the composition of elementary rotations, no quaternion in it.</summary>
-    [Property(MaxTest = 200)]
-    public void Qform_alone_places_voxels_as_the_sform_does(int ax, int ay, int az, bool reversed) => QformAgrees(Oblique(ax, ay, az, reversed));
+    /// <summary>
+    /// Rotation by angles about x, y and z, spacing 2, 3, 4 mm, any axis reversed: the composition of elementary rotations, no quaternion
+    /// in it.
+    /// </summary>
+    [Property(MaxTest = 100)]
+    public void Qform_alone_places_voxels_as_the_sform_does(int ax, int ay, int az, bool reversed) =>
+        QformAgrees(Oblique(ax, ay, az, reversed));
 
     [Theory]
     [InlineData(0, 0, 0)]
@@ -32,7 +36,7 @@ public class AffineTests
         NiftiFile.Write(scratch["image.nii"], NiftiFile.For([1], sheared), [1]);
         var read = NiftiFile.ReadHeader(scratch["image.nii"]);
         Assert.Equal((1, 0), (read.SformCode, read.QformCode));
-        Near(sheared, read.Affine);
+        Near(sheared, read.Affine, 1e-5);
     }
 
     private static void QformAgrees(double[,] affine)
@@ -40,12 +44,15 @@ public class AffineTests
         using var scratch = new Scratch();
         string path = scratch["image.nii"];
         NiftiFile.Write(path, NiftiFile.For([5, 4, 3], affine), new double[60]);
-        Near(affine, NiftiFile.ReadHeader(path).Affine);
+        var written = NiftiFile.ReadHeader(path);
+        Near(affine, written.Affine, 1e-5);
 
         byte[] bytes = File.ReadAllBytes(path);
         bytes.AsSpan(254, 2).Clear(); // sform_code
         bytes.AsSpan(280, 48).Clear(); // srow_x, srow_y, srow_z
-        Near(affine, NiftiFile.ReadHeader(scratch.Put("qform.nii", bytes)).Affine);
+        // a = √(1 − b² − c² − d²) is not stored; near half a turn single precision leaves it half its digits: √(3·2⁻²⁴)·2·4 mm is 3e-3.
+        bool halfTurn = written.Stored!.Quatern.Sum(v => v * v) > 0.99;
+        Near(affine, NiftiFile.ReadHeader(scratch.Put("qform.nii", bytes)).Affine, halfTurn ? 4e-3 : 2e-5);
     }
 
     private static double[,] Oblique(int ax, int ay, int az, bool reversed)
@@ -80,9 +87,8 @@ public class AffineTests
         return product;
     }
 
-    // Single precision, and near half a turn the root of 1 − b² − c² − d² loses half its digits: √(3·2⁻²⁴)·2·4 mm is 3e-3.
-    private static void Near(double[,] expected, double[,] actual)
+    private static void Near(double[,] expected, double[,] actual, double tolerance)
     {
-        for (int i = 0; i < 16; i++) Assert.Equal(expected[i / 4, i % 4], actual[i / 4, i % 4], 4e-3);
+        for (int i = 0; i < 16; i++) Assert.Equal(expected[i / 4, i % 4], actual[i / 4, i % 4], tolerance);
     }
 }

@@ -71,7 +71,7 @@ public class GzipTests
         // Far more bytes follow than the header speaks of, and they are damaged: who unpacked them would stumble.
         var raw = new RawImage();
         byte[] packed = Scratch.Gzip([.. raw.File(), .. Noise(100_000).Image()]);
-        for (int i = packed.Length / 2; i < packed.Length; i++) packed[i] = 0xff;
+        for (int i = 0; i < 64; i++) packed[packed.Length / 2 + i] ^= 0xa5;
         Assert.Throws<InvalidDataException>(() =>
         {
             using var whole = new GZipStream(new MemoryStream(packed), CompressionMode.Decompress);
@@ -109,7 +109,9 @@ public class GzipTests
         Assert.Throws<InvalidDataException>(() => NiftiFile.Read(path, (_, _, _) => throw new InvalidDataException("its own")));
     }
 
-    /// <summary>A row of numbers that packs badly: a linear congruential sequence (Numerical Recipes' constants, from memory; any would do).</summary>
+    /// <summary>
+    /// A row of numbers that packs badly: a linear congruential sequence (Numerical Recipes' constants, from memory; any would do).
+    /// </summary>
     private static RawImage Noise(int count)
     {
         uint state = 1;

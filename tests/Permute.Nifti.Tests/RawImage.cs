@@ -3,8 +3,8 @@ using System.Text;
 namespace Permute.Nifti.Tests;
 
 /// <summary>
-/// Files made byte by byte from the tables of offsets in nifti1.h and nifti2.h, apart from the code under test, so that any field can be wrong. As it stands: 2 × 3 × 4
-/// voxels, float32, values 0 to 23.
+/// Files made byte by byte from the tables of offsets in nifti1.h and nifti2.h, apart from the code under test, so that any field can be
+/// wrong. As it stands: 2 × 3 × 4 voxels, float32, values 0 to 23.
 /// </summary>
 public sealed class RawImage(int version = 1, bool bigEndian = false)
 {

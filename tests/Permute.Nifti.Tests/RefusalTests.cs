@@ -1,6 +1,8 @@
 namespace Permute.Nifti.Tests;
 
-/// <summary>Whatever is wrong with a file gets one sentence that names it. What is allowed is the standard's say (nifti1.h, nifti2.h).</summary>
+/// <summary>
+/// Whatever is wrong with a file gets one sentence that names it. What is allowed is the standard's say (nifti1.h, nifti2.h).
+/// </summary>
 public class RefusalTests
 {
     [Fact]

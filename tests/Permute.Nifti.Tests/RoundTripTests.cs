@@ -164,7 +164,8 @@ public class RoundTripTests
     public void A_dimension_beyond_16_bits_is_refused()
     {
         using var scratch = new Scratch();
-        var error = Assert.Throws<NiftiException>(() => NiftiFile.Write(scratch["long.nii"], NiftiFile.For([40_000], Affine), new double[40_000]));
+        var header = NiftiFile.For([40_000], Affine);
+        var error = Assert.Throws<NiftiException>(() => NiftiFile.Write(scratch["long.nii"], header, new double[40_000]));
         Assert.Contains("40000", error.Message);
     }
 
