@@ -1,25 +1,33 @@
 namespace Permute.Data;
 
-/// <summary>Writes a file aside, flushes it to disk and renames it, so that a file is whole or not there.</summary>
+/// <summary>
+/// Writes a file aside, in the same folder, and renames it once it is whole and on disk: a reader sees the old file or the new one, never half of it.
+/// </summary>
 public static class AtomicFile
 {
-    /// <summary>Replaces the file at <paramref name="path"/> by what <paramref name="write"/> writes.</summary>
+    /// <summary>Writes <paramref name="path"/> through a stream. Its folder is made if missing. A fault of <paramref name="write"/> leaves nothing behind.</summary>
+    /// <exception cref="InputException">The folder or file cannot be written.</exception>
     public static void Write(string path, Action<Stream> write)
     {
-        string aside = $"{path}.{Environment.ProcessId}-{Environment.CurrentManagedThreadId}.part";
+        string whole = Path.GetFullPath(path), folder = Path.GetDirectoryName(whole)!;
+        string aside = Path.Combine(folder, $".{Path.GetFileName(whole)}.{Guid.NewGuid():N}.part");
         try
         {
-            using (var stream = new FileStream(aside, FileMode.Create, FileAccess.Write, FileShare.None, 1 << 16))
+            Directory.CreateDirectory(folder);
+            using (var stream = new FileStream(aside, FileMode.CreateNew, FileAccess.Write, FileShare.None, 1 << 16))
             {
                 write(stream);
                 stream.Flush(flushToDisk: true);
             }
-            File.Move(aside, path, overwrite: true);
+            File.Move(aside, whole, overwrite: true);
         }
-        catch
+        catch (Exception e) when (e is IOException or UnauthorizedAccessException)
         {
-            File.Delete(aside);
-            throw;
+            throw new InputException($"{path}: cannot be written: {e.Message.TrimEnd('.')}; make room or choose another output folder.", e);
+        }
+        finally
+        {
+            if (File.Exists(aside)) File.Delete(aside);
         }
     }
 }
