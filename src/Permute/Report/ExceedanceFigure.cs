@@ -111,16 +111,17 @@ internal static class ExceedanceFigure
     {
         bool off = mark.At > to;
         double at = off ? to : mark.At, height = Math.Pow(10, decadesAbove);
-        if (!off) model.Annotations.Add(new LineAnnotation
+        bool observed = mark.Dash == LineStyle.None;
+        // Drawn as a headless arrow, which may leave the plot's frame to reach its name.
+        if (!off) model.Annotations.Add(new ArrowAnnotation
         {
-            Type = LineAnnotationType.Vertical,
-            X = at,
-            MinimumY = mark.Dash == LineStyle.None ? 1 : lowest,
-            MaximumY = height,
+            StartPoint = new DataPoint(at, lowest),
+            EndPoint = new DataPoint(at, height),
+            HeadLength = 0,
+            HeadWidth = 0,
             Color = mark.Colour,
-            LineStyle = mark.Dash == LineStyle.None ? LineStyle.Solid : mark.Dash,
-            StrokeThickness = mark.Dash == LineStyle.None ? 0.7 : 2,
-            ClipByYAxis = false,
+            LineStyle = observed ? LineStyle.Solid : mark.Dash,
+            StrokeThickness = observed ? 0.8 : 2,
         });
         model.Annotations.Add(Text(off ? $"{mark.Label} →" : mark.Label, at, height, mark.Colour));
     }

@@ -16,6 +16,9 @@ internal static partial class FigureStyle
 {
     public const int Width = 760, Height = 440;
 
+    // Text is measured as Arial, whose widths are known, and drawn in whatever sans-serif the reader has.
+    private const string Measured = "Arial";
+
     public static readonly OxyColor Ink = OxyColor.Parse("#2B2B2B"), Faint = OxyColor.Parse("#D9D9D9");
 
     public static OxyColor Colour(string method) => OxyColor.Parse(method switch
@@ -34,7 +37,7 @@ internal static partial class FigureStyle
 
     public static PlotModel Model(OxyThickness margins) => new()
     {
-        DefaultFont = "sans-serif",
+        DefaultFont = Measured,
         DefaultFontSize = 13,
         TextColor = Ink,
         PlotAreaBorderColor = Ink,
@@ -55,16 +58,26 @@ internal static partial class FigureStyle
         return axis;
     }
 
-    /// <summary>The drawing as SVG that scales, whose inner names are its own, so that several fit on one page.</summary>
+    /// <summary>The drawing as one SVG element that scales. Nothing is clipped: names may stand outside the plot's frame, and the rest keeps inside by its own limits.</summary>
     public static Figure Draw(PlotModel model, string name, string caption)
     {
         using var stream = new MemoryStream();
-        new SvgExporter { Width = Width, Height = Height, IsDocument = false, UseVerticalTextAlignmentWorkaround = true }.Export(model, stream);
+        new SvgExporter { Width = Width, Height = Height, TextMeasurer = new Measurer(), UseVerticalTextAlignmentWorkaround = true }.Export(model, stream);
         string svg = Encoding.UTF8.GetString(stream.ToArray());
-        svg = InnerName().Replace(svg, m => $"{m.Groups[1].Value}{name}-{m.Groups[2].Value}");
-        return new(name, caption, svg);
+        svg = Clip().Replace(svg[svg.IndexOf("<svg", StringComparison.Ordinal)..], "").Replace($"font-family=\"{Measured}\"", "font-family=\"sans-serif\"");
+        return new(name, caption, svg.Replace("<svg ", $"<svg viewBox=\"0 0 {Width} {Height}\" role=\"img\" "));
     }
 
-    [GeneratedRegex("""(id="|url\(#)([A-Za-z]+[0-9]+)""")]
-    private static partial Regex InnerName();
+    [GeneratedRegex(@"\s*<defs>.*?</defs>|\s*<g clip-path=\S+ />| clip-path=[^>\s]+", RegexOptions.Singleline)]
+    private static partial Regex Clip();
+
+    // The library measures text for print, in points; the drawing is in pixels, and its baseline wants less than the full line.
+    private sealed class Measurer() : PdfRenderContext(FigureStyle.Width, FigureStyle.Height, OxyColors.White)
+    {
+        public override OxySize MeasureText(string text, string fontFamily, double fontSize, double fontWeight)
+        {
+            var points = base.MeasureText(text, fontFamily, fontSize, fontWeight);
+            return new OxySize(points.Width * 96 / 72, points.Height * 1.15);
+        }
+    }
 }

@@ -15,8 +15,8 @@ internal sealed record Finding(string What, string Detail, IReadOnlyList<(string
     /// <summary>The same as text: "permutation, field theory", or "none".</summary>
     public string SurvivesBy => Survives.Count == 0 ? "none" : string.Join(", ", Survives);
 
-    public static Finding Of(Summary s, ClusterSummary c) => new($"cluster {c.Id}",
-        $"{Show.Plural(c.Voxels, "voxel")}, peak {Show.Signed(c.Peak)}",
+    public static Finding Of(Summary s, ClusterSummary c) => new($"cluster {c.Id} ({(c.Sign < 0 ? "-" : "+")})",
+        Show.Plural(c.Voxels, "voxel"),
         [(Words.Permutation, c.AdjustedP.Permutation), (Words.FieldTheory, c.AdjustedP.FieldTheory), (Words.Bonferroni, null), .. Mass(s, c.AdjustedP.Mass)], s.Alpha);
 
     public static Finding Of(Summary s, PeakSummary p) => new("voxel", $"{Show.Signed(p.Value)} at {Show.Place(p.Mm)} mm", ByHeight(s, p.AdjustedP), s.Alpha);
