@@ -1,3 +1,5 @@
+using System.Runtime.CompilerServices;
+
 namespace Permute.Data;
 
 /// <summary>
@@ -18,6 +20,7 @@ internal sealed class Background
     private readonly Stack<int> waiting = new();
     private readonly bool[] waits;
 
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     private Background(Grid grid, VoxelBits image)
     {
         this.grid = grid;
@@ -32,6 +35,7 @@ internal sealed class Background
     }
 
     /// <summary>The background among the <paramref name="zeros"/> of an image on <paramref name="grid"/>.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     public static VoxelBits Of(Grid grid, VoxelBits zeros)
     {
         var flood = new Background(grid, zeros);
@@ -61,6 +65,7 @@ internal sealed class Background
         }
     }
 
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     private void Visit(int row)
     {
         waits[row] = false;
@@ -73,6 +78,7 @@ internal sealed class Background
     }
 
     /// <summary>Gives what a row has reached to the zeros beside it in a neighbouring row.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     private void Hand(int from, int to)
     {
         bool grown = false;
@@ -93,6 +99,7 @@ internal sealed class Background
         waiting.Push(row);
     }
 
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     private void SpreadAlong(int row)
     {
         long at = (long)row * words;

@@ -1,3 +1,6 @@
+using System.Numerics;
+using System.Runtime.CompilerServices;
+
 namespace Permute.Data;
 
 /// <summary>
@@ -9,6 +12,7 @@ internal sealed class Coverage
     private readonly VoxelBits[] lost;
     private readonly VoxelBits[] zeros;
 
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     private Coverage(VoxelBits[] lost, VoxelBits[] zeros)
     {
         (this.lost, this.zeros) = (lost, zeros);
@@ -24,8 +28,8 @@ internal sealed class Coverage
                 all &= image.Words[w];
             }
             Inside.Words[w] = ~once & Inside.Valid(w);
-            InSome += System.Numerics.BitOperations.PopCount(once & ~all);
-            for (int i = 0; i < lost.Length; i++) AloneCost[i] += System.Numerics.BitOperations.PopCount(lost[i].Words[w] & ~twice);
+            InSome += BitOperations.PopCount(once & ~all);
+            for (int i = 0; i < lost.Length; i++) AloneCost[i] += BitOperations.PopCount(lost[i].Words[w] & ~twice);
         }
     }
 
@@ -69,7 +73,7 @@ internal sealed class Coverage
     public long ZerosAt(int image, VoxelBits kept)
     {
         long total = 0;
-        for (int w = 0; w < kept.Words.Length; w++) total += System.Numerics.BitOperations.PopCount(zeros[image].Words[w] & kept.Words[w]);
+        for (int w = 0; w < kept.Words.Length; w++) total += BitOperations.PopCount(zeros[image].Words[w] & kept.Words[w]);
         return total;
     }
 }

@@ -1,3 +1,4 @@
+using System.Runtime.CompilerServices;
 using Permute.Nifti;
 
 namespace Permute.Data;
@@ -9,6 +10,7 @@ namespace Permute.Data;
 /// <param name="positions">Matrix voxel of each grid voxel, −1 for none; null when the matrix holds the whole grid.</param>
 internal sealed class ImageLoader(SubjectMatrix matrix, IReadOnlyList<ImageFile> files, int voxelsPerImage, int[]? positions)
 {
+    private readonly double[] largest = new double[files.Count];
     private int done;
 
     /// <summary>SHA-256 of each file read, by its name as given.</summary>
@@ -38,7 +40,7 @@ internal sealed class ImageLoader(SubjectMatrix matrix, IReadOnlyList<ImageFile>
                 faults[f] = e.Message;
             }
         });
-        InputException.ThrowIfAny([.. faults.OfType<string>()]);
+        InputException.ThrowIfAny([.. faults.OfType<string>(), .. BeyondSingleRange()]);
         foreach (var (name, hash) in hashes.SelectMany(h => h)) Sha256[name] = hash;
     }
 
@@ -62,8 +64,24 @@ internal sealed class ImageLoader(SubjectMatrix matrix, IReadOnlyList<ImageFile>
         });
     }
 
+    /// <summary>Values are held as two single-precision numbers, so an image must not live wholly beyond what they can hold.</summary>
+    private IEnumerable<string> BeyondSingleRange() =>
+        from i in Enumerable.Range(0, files.Count)
+        where largest[i] is > float.MaxValue or > 0 and < 1e-28
+        select $"{files[i].Name}: the values reach {largest[i]:0.##e+0}; expected a largest magnitude between 1e-28 and 3e+38, so change their unit.";
+
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
+    private static double Largest(ReadOnlySpan<double> values)
+    {
+        double most = 0;
+        foreach (double v in values)
+            if (Math.Abs(v) > most && double.IsFinite(v)) most = Math.Abs(v);
+        return most;
+    }
+
     private void Store(int image, int first, ReadOnlySpan<double> values)
     {
+        if (!IsExact(files[image].Header!)) largest[image] = Math.Max(largest[image], Largest(values));
         if (positions == null) matrix.SetRun(image, first, values);
         else matrix.SetMapped(image, positions.AsSpan(first, values.Length), values);
     }

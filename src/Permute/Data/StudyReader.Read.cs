@@ -45,7 +45,7 @@ public static partial class StudyReader
                 Table = table,
                 Rows = [.. rows.Select(r => source.Rows[r])],
                 Variables = source.Variables,
-                Notes = columns.Length < FewColumns ? [] : [.. TwinNotes.Of(data, [.. rows.Select(r => source.Rows[r])], "variable", options)],
+                Notes = columns.Length < FewColumns ? [] : [.. TwinNotes.Of(data, [.. rows.Select(r => source.Rows[r])], "variable")],
                 Sha256 = FileHash.Of(table.Path, table.Path),
             };
         }
@@ -77,7 +77,7 @@ public static partial class StudyReader
                 data = all.Select(kept);
                 all.Dispose();
             }
-            notes.AddRange(TwinNotes.Of(data, names, "voxel of the mask", options));
+            notes.AddRange(TwinNotes.Of(data, names, "voxel of the mask"));
             if (source.Mask != null) AddHashes(loader.Sha256, source.Mask);
             if (source.Table != null) AddHashes(loader.Sha256, source.Table.Path);
             return new Study

@@ -1,9 +1,12 @@
+using System.Runtime.CompilerServices;
 using System.Runtime.Intrinsics;
-using System.Security.Cryptography;
 
 namespace Permute.Data;
 
-/// <summary>Whole runs of voxels at once, for reading images.</summary>
+/// <summary>
+/// Whole runs of voxels at once, for reading images. The inner loops are compiled in full at once: each runs a few times only, but long, and would be over
+/// before the runtime had improved it.
+/// </summary>
 public sealed unsafe partial class SubjectMatrix
 {
     /// <summary>Sets the voxels from <paramref name="firstVoxel"/> on of one image. Different images may be set from different threads at once. Without
@@ -23,18 +26,20 @@ public sealed unsafe partial class SubjectMatrix
         }
     }
 
-    /// <summary>As <see cref="SetRun"/>, each value going to the voxel that <paramref name="positions"/> gives for it; a negative position skips the value.</summary>
+    /// <summary>As <see cref="SetRun"/>, each value going to the voxel that <paramref name="positions"/> gives for it, −1 skipping it. Positions follow a
+    /// <see cref="Mask.Position"/>: between two skipped values they count up by one.</summary>
     public void SetMapped(int image, ReadOnlySpan<int> positions, ReadOnlySpan<double> values)
     {
         ArgumentOutOfRangeException.ThrowIfNotEqual(positions.Length, values.Length);
-        CheckImage(image);
-        for (int i = 0; i < values.Length; i++)
+        for (int i = 0; i < values.Length;)
         {
-            int voxel = positions[i];
-            if (voxel < 0) continue;
-            ArgumentOutOfRangeException.ThrowIfGreaterThanOrEqual(voxel, Voxels);
-            long at = Offset(image, voxel);
-            Split(values.Slice(i, 1), high + at, low == null ? null : low + at);
+            int skipped = positions[i..].IndexOfAnyExcept(-1);
+            if (skipped < 0) return;
+            i += skipped;
+            int count = positions[i..].IndexOf(-1) is int end && end >= 0 ? end : positions.Length - i;
+            ArgumentOutOfRangeException.ThrowIfNotEqual(positions[i + count - 1] - positions[i], count - 1);
+            SetRun(image, positions[i], values.Slice(i, count));
+            i += count;
         }
     }
 
@@ -52,6 +57,7 @@ public sealed unsafe partial class SubjectMatrix
     }
 
     /// <summary>Which voxels of an image are exactly zero, and which are finite.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     internal void Classify(int image, VoxelBits zeros, VoxelBits finite)
     {
         CheckImage(image);
@@ -70,20 +76,23 @@ public sealed unsafe partial class SubjectMatrix
         }
     }
 
-    /// <summary>SHA-256 of the values of one image as they are held.</summary>
-    internal byte[] Hash(int image)
+    /// <summary>Whether two images hold the same values bit for bit.</summary>
+    internal bool SameValues(int one, int other)
     {
-        CheckImage(image);
-        using var hash = IncrementalHash.CreateHash(HashAlgorithmName.SHA256);
+        CheckImage(one);
+        CheckImage(other);
         for (int b = 0; b < Blocks; b++)
         {
-            long at = Offset(image, b * Lanes);
-            hash.AppendData(new ReadOnlySpan<byte>(high + at, Lanes * sizeof(float)));
-            if (low != null) hash.AppendData(new ReadOnlySpan<byte>(low + at, Lanes * sizeof(float)));
+            long p = Offset(one, b * Lanes), q = Offset(other, b * Lanes);
+            if (!Row(high + p).SequenceEqual(Row(high + q))) return false;
+            if (low != null && !Row(low + p).SequenceEqual(Row(low + q))) return false;
         }
-        return hash.GetHashAndReset();
+        return true;
+
+        static ReadOnlySpan<uint> Row(float* from) => new(from, Lanes);
     }
 
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     private static void Split(ReadOnlySpan<double> values, float* first, float* second)
     {
         int i = 0;
@@ -107,18 +116,21 @@ public sealed unsafe partial class SubjectMatrix
         }
     }
 
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     private bool Gather(float* from, float* to, ReadOnlySpan<int> voxels)
     {
+        long* at = stackalloc long[Lanes];
         bool any = false;
         for (int first = 0; first < voxels.Length; first += Lanes)
         {
-            var block = voxels.Slice(first, Math.Min(Lanes, voxels.Length - first));
-            for (int i = 0; i < Images; i++)
+            int count = Math.Min(Lanes, voxels.Length - first);
+            for (int l = 0; l < count; l++) at[l] = Offset(0, voxels[first + l]);
+            float* row = to + Offset(0, first);
+            for (int i = 0; i < Images; i++, row += Lanes)
             {
-                float* row = to + ((long)(first / Lanes) * Images + i) * Lanes;
-                for (int l = 0; l < block.Length; l++)
+                for (int l = 0; l < count; l++)
                 {
-                    row[l] = from[Offset(i, block[l])];
+                    row[l] = from[at[l] + i * Lanes];
                     any |= row[l] != 0;
                 }
             }

@@ -1,3 +1,5 @@
+using System.Runtime.CompilerServices;
+
 namespace Permute.Data;
 
 /// <summary>
@@ -40,6 +42,7 @@ internal static class UsableVoxels
         return losses;
     }
 
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     private static VoxelLoss Loss(double[] y, ResidualRule reduced)
     {
         if (!y.AsSpan().ContainsAnyExcept(y[0])) return VoxelLoss.Constant;
@@ -52,6 +55,7 @@ internal static class UsableVoxels
         return SumOfSquares(y) <= Explained * total ? VoxelLoss.Explained : VoxelLoss.None;
     }
 
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     private static double SumOfSquares(double[] y)
     {
         double sum = 0;

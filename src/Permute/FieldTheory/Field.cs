@@ -44,12 +44,21 @@ public abstract record Field
     /// <summary>Whether P(T &gt; u) = P(T &lt; −u).</summary>
     protected virtual bool Symmetric => false;
 
-    /// <summary>A root of <paramref name="f"/> between two points where its signs differ, to rounding.</summary>
+    /// <summary>A root of <paramref name="f"/> between two points, the upper above 0, where its signs differ, to rounding.</summary>
     internal static double Solve(Func<double, double> f, double low, double high)
     {
         if (f(low) == 0) return low;
         if (f(high) == 0) return high;
-        double tolerance = 4e-16 * Math.Max(Math.Abs(low), Math.Abs(high));
-        return Brent.TryFindRoot(f, low, high, tolerance, 200, out double root) ? root : Bisection.FindRoot(f, low, high, tolerance, 2000);
+        // One tolerance serves both the place and the value: the place is taken as a share of the upper end.
+        double scale = high;
+        if (Brent.TryFindRoot(share => f(share * scale), low / scale, 1, 4e-16, 200, out double root)) return root * scale;
+        // Brent's method gives up where rounding hides the slope; halving ends at neighbouring numbers.
+        bool rising = f(low) < 0;
+        for (double middle = low + (high - low) / 2; middle > low && middle < high; middle = low + (high - low) / 2)
+        {
+            if (f(middle) < 0 == rising) low = middle;
+            else high = middle;
+        }
+        return high;
     }
 }

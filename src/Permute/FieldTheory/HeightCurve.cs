@@ -6,6 +6,7 @@ internal sealed class HeightCurve
     // Even steps of asinh v: fine about 1, where the turning points are, yet 10¹² is only 600 steps away.
     private const double Step = 0.05;
     private const double Farthest = 1e15;
+    private const double Smallest = 1e-12; // the densities of F and chi-square may be infinite at 0 itself
     private readonly List<(double V, double Ec)> peaks = [];
 
     /// <summary>The curve of <paramref name="field"/> on a region of <paramref name="resels"/>.</summary>
@@ -54,11 +55,9 @@ internal sealed class HeightCurve
             high *= 2;
             if (high > Farthest) return null;
         }
-        return Field.Solve(u => Ec(u) - target, low, high);
+        // In logarithms, so that a small alpha is met as closely as a large one.
+        return Field.Solve(u => Ec(u) is > 0 and var ec ? Math.Log(ec / target) : -1000, low, high);
     }
-
-    // F and chi-square are not defined at 0 itself.
-    private const double Smallest = 1e-12;
 
     private double Ec(double u) => ExpectedEc(Resels, Field, u);
 

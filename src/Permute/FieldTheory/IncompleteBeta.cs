@@ -17,10 +17,14 @@ internal static class IncompleteBeta
     private static double Front(double a, double b, double x, double y)
     {
         double x0 = a / (a + b), y0 = b / (a + b), shift = x * y0 - y * x0;
-        double ln = a * Gammas.Log1p(shift / x0) + b * Gammas.Log1p(-shift / y0)
+        double ln = a * LnRatio(x, x0, shift) + b * LnRatio(y, y0, -shift)
             - Gammas.StirlingCorrection(a) - Gammas.StirlingCorrection(b) + Gammas.StirlingCorrection(a + b);
         return Math.Sqrt(a * y0 / (2 * Math.PI)) * Math.Exp(ln);
     }
+
+    // ln(x/x0) from their difference where they are close, and from themselves where the difference would swallow x.
+    private static double LnRatio(double x, double x0, double difference) =>
+        Math.Abs(difference) < x0 / 2 ? Gammas.Log1p(difference / x0) : Math.Log(x / x0);
 
     // Lentz's method.
     private static double Fraction(double a, double b, double x)

@@ -14,15 +14,28 @@ internal static class LocalResels
         return Math.Sqrt(there.Sum(v => (v - mean) * (v - mean)) / there.Length) / mean;
     }
 
-    /// <summary>The variation to expect when smoothness is even.</summary>
-    public static double ExpectedVariation(int nu, int dimensions)
+    /// <summary>|G| of d difference vectors, the rows of <paramref name="rows"/>, each <paramref name="length"/> long.</summary>
+    public static double Gram(ReadOnlySpan<double> rows, int d, int length)
     {
-        // From simulation (24³ voxels, FWHM 3, one-sample residuals of n = 8, 12, 20, 40), on straight lines between logarithms.
-        double[] at = [7, 11, 19, 39], cv = [1.07, 0.77, 0.54, 0.36];
-        int i = nu < at[1] ? 0 : nu < at[2] ? 1 : 2;
-        double slope = Math.Log(cv[i + 1] / cv[i]) / Math.Log(at[i + 1] / at[i]);
-        return cv[i] * Math.Pow(nu / at[i], slope);
+        Span<double> g = stackalloc double[9];
+        for (int a = 0; a < d; a++)
+            for (int b = 0; b <= a; b++)
+            {
+                double dot = 0;
+                for (int k = 0; k < length; k++) dot += rows[a * length + k] * rows[b * length + k];
+                g[3 * a + b] = g[3 * b + a] = dot;
+            }
+        return Determinant(g, d);
     }
+
+    /// <summary>Determinant of the first d rows and columns of a symmetric matrix of three.</summary>
+    public static double Determinant(ReadOnlySpan<double> g, int d) => d switch
+    {
+        0 => double.NaN,
+        1 => g[0],
+        2 => g[0] * g[4] - g[1] * g[1],
+        _ => g[0] * (g[4] * g[8] - g[5] * g[5]) - g[1] * (g[1] * g[8] - g[5] * g[2]) + g[2] * (g[1] * g[5] - g[4] * g[2]),
+    };
 
     /// <summary>A value at every mask position, with mean <paramref name="perVoxel"/>: the nearest one's where there is none, counted in steps across faces.</summary>
     public static double[] Fill(Mask mask, double[] local, double perVoxel)

@@ -108,14 +108,7 @@ internal sealed class ResidualSlices
                 g[3 * i + j] = g[3 * j + i] = 1 + Dot(next[a], a == 2 ? z + 1 : z, next[b], b == 2 ? z + 1 : z) - near[a] - near[b];
             }
         }
-        double determinant = axes.Length switch
-        {
-            0 => double.NaN,
-            1 => g[0],
-            2 => g[0] * g[4] - g[1] * g[1],
-            _ => g[0] * (g[4] * g[8] - g[5] * g[5]) - g[1] * (g[1] * g[8] - g[5] * g[2]) + g[2] * (g[1] * g[5] - g[4] * g[2]),
-        };
-        return Math.Sqrt(Math.Max(0, determinant) / Math.Pow(4 * Math.Log(2), axes.Length));
+        return Math.Sqrt(Math.Max(0, LocalResels.Determinant(g, axes.Length)) / Math.Pow(4 * Math.Log(2), axes.Length));
     }
 
     // Four fixed lanes, folded in order: the same bits on every processor.

@@ -40,7 +40,8 @@ public static class Smoothness
             Lag2Fwhm = [.. Enumerable.Range(0, 3).Select(axis => Fwhm(sums.Mean(axis, 2), 2, nu))],
             Lag3Fwhm = [.. Enumerable.Range(0, 3).Select(axis => Fwhm(sums.Mean(axis, 3), 3, nu))],
             UnevennessCv = LocalResels.Variation(local),
-            ExpectedCv = LocalResels.ExpectedVariation(nu, used.Length),
+            ExpectedCv = reason != null ? double.NaN
+                : EvenSmoothness.Variation(nu, [.. used.Select(axis => TrueCorrelation(m[axis], nu))]),
             LocalResels = reason == null ? LocalResels.Fill(mask, local, perVoxel) : [],
         };
     }

@@ -25,7 +25,8 @@ public sealed record SmoothnessEstimate
     /// <summary>Coefficient of variation of the local resels over the voxels that have all forward neighbours; NaN where there are none.</summary>
     public required double UnevennessCv { get; init; }
 
-    /// <summary>The coefficient of variation to expect when smoothness is even, at this ν and number of dimensions, from simulation.</summary>
+    /// <summary>The coefficient of variation to expect when smoothness is even, at this ν and FWHM, from simulation; NaN when there is no
+    /// smoothness.</summary>
     public required double ExpectedCv { get; init; }
 
     /// <summary>Resels per voxel at each mask position, with mean 1/∏FWHM; a voxel without all its forward neighbours has the value of the

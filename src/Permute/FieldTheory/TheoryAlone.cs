@@ -69,7 +69,7 @@ public static class TheoryAlone
             FwhmMm = mm,
             Assumed = true,
             ReselCounts = resels.ToArray(),
-            VolumeInResels = fwhm == null ? null : width.Aggregate((double)voxels, (v, w) => v / (w ?? 1)),
+            VolumeInResels = fwhm == null || request.Mask == null ? null : width.Aggregate((double)voxels, (v, w) => v / (w ?? 1)),
         };
     }
 

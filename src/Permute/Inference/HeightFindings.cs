@@ -21,7 +21,7 @@ internal sealed class HeightFindings
         critical = CriticalValue.Of(maxima, rules.Alpha);
         if (input.StepDown is { } counts)
         {
-            double[] p = StepDown.P(counts, count);
+            double[] p = StepDownP.Of(counts, count);
             for (int rank = 0; rank < p.Length; rank++) stepDown[counts.Voxels[rank]] = p[rank];
         }
         Summary = new HeightSummary

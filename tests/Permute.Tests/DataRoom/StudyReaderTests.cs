@@ -103,7 +103,8 @@ public sealed class StudyReaderTests : IDisposable
             Assert.Equal(one.Mask!.Voxels, other.Mask!.Voxels);
             Assert.Equal(one.Notes, other.Notes);
             Assert.Equal(one.Sha256.OrderBy(p => p.Key), other.Sha256.OrderBy(p => p.Key));
-            for (int i = 0; i < 5; i++) Assert.Equal(one.Data.Hash(i), other.Data.Hash(i));
+            for (int v = 0; v < one.Data.Voxels; v++)
+                for (int i = 0; i < 5; i++) Assert.Equal(one.Data[i, v], other.Data[i, v]);
         }
     }
 
@@ -151,6 +152,17 @@ public sealed class StudyReaderTests : IDisposable
         using var study = Read(new() { Images = paths });
         for (int v = 0; v < 27; v++)
             for (int i = 0; i < 3; i++) Assert.Equal(values[i][v] * (double)0.1f + 3, study.Data[i, v], 1e-13);
+    }
+
+    [Theory]
+    [InlineData(1e-40)]
+    [InlineData(1e37)]
+    public void Images_beyond_single_range_ask_for_another_unit(double unit)
+    {
+        string[] paths = folder.Images(3, [4, 4, 4], all => { Scale([all[0]], unit); Scale([all[2]], unit); all[1][3] = double.NaN; }, NiftiType.Float64);
+        string message = Fault(() => Read(new() { Images = paths }));
+        Assert.Equal(2, message.Split('\n').Length);
+        Says(message, paths[0], paths[2], "unit");
     }
 
     [Fact]

@@ -26,7 +26,7 @@ public class SubjectMatrixTests
     {
         using SubjectMatrix matrix = new(2, 3);
         matrix.KeepSecondParts();
-        matrix.SetMapped(1, [-1, 2, 0, -1], [9, 0.1, 0.2, 9]);
+        matrix.SetMapped(1, [-1, 0, -1, -1, 2], [9, 0.2, 9, 9, 0.1]);
         Assert.Equal(0.2, matrix[1, 0], 1e-15);
         Assert.Equal(0, matrix[1, 1]);
         Assert.Equal(0.1, matrix[1, 2], 1e-15);
@@ -40,6 +40,7 @@ public class SubjectMatrixTests
         Assert.Throws<ArgumentOutOfRangeException>(() => matrix.SetRun(0, 8, new double[3]));
         Assert.Throws<ArgumentOutOfRangeException>(() => matrix.SetRun(1, 0, new double[3]));
         Assert.Throws<ArgumentOutOfRangeException>(() => matrix.SetMapped(0, [10], [1.0]));
+        Assert.Throws<ArgumentOutOfRangeException>(() => matrix.SetMapped(0, [3, 5], [1.0, 1.0]));
     }
 
     [Fact]
@@ -58,6 +59,16 @@ public class SubjectMatrixTests
         using var matrix = SubjectMatrix.FromRows([[1, 0.1, 2], [3, 4, 5]]);
         using SubjectMatrix whole = matrix.Select([0, 2]), exact = matrix.Select([1, 2]);
         Assert.Equal(exact.Bytes, 2 * whole.Bytes);
+    }
+
+    [Fact]
+    public void Images_are_the_same_only_if_every_bit_is()
+    {
+        double[] values = [.. Enumerable.Range(0, 100).Select(v => v * 0.1)], nearly = [.. values];
+        nearly[99] += 1e-13;
+        using var matrix = SubjectMatrix.FromRows([values, nearly, values]);
+        Assert.True(matrix.SameValues(0, 2));
+        Assert.False(matrix.SameValues(0, 1));
     }
 
     [Fact]

@@ -10,7 +10,7 @@ public class BenjaminiHochbergTests
     [Fact]
     public void The_worked_example_of_1995_is_reproduced()
     {
-        var example = TestData.Json("p-value-tools.json").GetProperty("benjaminiHochberg");
+        var example = Reference.Json("p-value-tools.json").GetProperty("benjaminiHochberg");
         double[] adjusted = BenjaminiHochberg.Adjust(example.Doubles("p"));
         double[] expected = example.Doubles("adjusted");
         for (int i = 0; i < expected.Length; i++) Assert.Equal(expected[i], adjusted[i], 1e-12);

@@ -3,6 +3,7 @@ using Permute.Data;
 using Permute.Design;
 using Permute.Engine;
 using Permute.Inference;
+using Permute.Statistics;
 
 namespace Permute.Tests.Inference;
 
@@ -51,6 +52,20 @@ internal static class Some
             Rows = [.. Enumerable.Range(1, images).Select(i => $"image-{i}")],
             Variables = mask == null ? [.. Enumerable.Range(1, voxels).Select(v => $"v{v}")] : [],
             MaskOrigin = mask == null ? null : "given",
+        };
+    }
+
+    /// <summary>Largest, count and total of the clusters of each row's voxels above u, both signs apart but counted together.</summary>
+    public static ClusterMaxima Clusters(Mask mask, IReadOnlyList<double[]> maps, double u, bool both, int neighbours = 18)
+    {
+        var scans = maps.Select(t => (both ? new[] { 1, -1 } : [1])
+            .SelectMany(sign => ClusterLabels.Find(mask, [.. t.Select(v => sign * v > u)], neighbours).Sizes).ToArray()).ToArray();
+        return new ClusterMaxima
+        {
+            FormingStatistic = u,
+            Extent = [.. scans.Select(sizes => sizes.DefaultIfEmpty().Max())],
+            ClusterCount = [.. scans.Select(sizes => sizes.Length)],
+            VoxelsAbove = [.. scans.Select(sizes => sizes.Sum())],
         };
     }
 
