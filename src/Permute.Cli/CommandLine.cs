@@ -10,7 +10,7 @@ public static class CommandLine
     /// <summary>Parses <paramref name="args"/>, does what they ask, and returns the exit code (<see cref="ExitCode"/>).</summary>
     public static async Task<int> RunAsync(string[] args, TextWriter stdout, TextWriter stderr, CancellationToken cancel = default)
     {
-        var session = new Session(stdout, stderr, Quoting.Command(args), cancel);
+        var session = new Session(stdout, stderr, ["permute", .. args], cancel);
         ParseResult parse = Root(session).Parse(args);
         if (parse.Action is ParseErrorAction)
         {

@@ -12,8 +12,7 @@ internal static class Output
     {
         ReportWriter.Write(findings, run, session.CommandLine);
         if (json) session.Output.Write(SummaryJson.Text(findings.Summary));
-        else Screen.Write(findings.Summary, session.Output, session.Width);
-        session.Say($"the report is in {Path.Combine(run, "report.html")}.");
+        else Screen.Write(findings.Summary, session.Output, session.Width, run);
     }
 
     /// <summary>Prints a preview.</summary>

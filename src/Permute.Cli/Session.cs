@@ -3,9 +3,9 @@ namespace Permute.Cli;
 /// <summary>What a verb works with: where data and talk go, how it was called, and whether it is to stop.</summary>
 /// <param name="Output">Standard output: data.</param>
 /// <param name="Error">Standard error: talk and progress.</param>
-/// <param name="CommandLine">The command as it was given, to be repeated in reports.</param>
+/// <param name="CommandLine">The command as it was given, word by word, to be repeated in reports.</param>
 /// <param name="Cancel">Cancelled when the user stops the program.</param>
-internal sealed record Session(TextWriter Output, TextWriter Error, string CommandLine, CancellationToken Cancel)
+internal sealed record Session(TextWriter Output, TextWriter Error, IReadOnlyList<string> CommandLine, CancellationToken Cancel)
 {
     /// <summary>The run folder a stopped verb leaves behind; null while there is none.</summary>
     public string? RunFolder { get; set; }
