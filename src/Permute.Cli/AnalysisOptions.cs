@@ -75,7 +75,7 @@ internal sealed class AnalysisOptions
         Threads = parse.GetValue(threads),
         MemoryGb = parse.GetValue(memory),
         Alpha = parse.GetValue(alpha) ?? Standard.Alpha,
-        AssumeFwhmMm = parse.GetValue(assumeFwhm),
+        AssumeFwhmMm = parse.GetValue(assumeFwhm) is { Length: > 0 } mm ? mm : null,
         Out = parse.GetValue(folder) ?? Standard.Out,
         Replace = parse.GetValue(replace),
     };

@@ -14,8 +14,9 @@ public static class CommandLine
         ParseResult parse = Root(session).Parse(args);
         if (parse.Action is ParseErrorAction)
         {
-            foreach (string message in parse.Errors.Select(e => e.Message).Distinct()) session.Say(message.TrimEnd('.') + ".");
-            session.Say($"see {string.Join(' ', Names(parse.CommandResult.Command))} --help.");
+            string[] messages = [.. Messages(parse)];
+            foreach (string message in messages[..^1]) session.Say($"{message}.");
+            session.Say($"{messages[^1]}; see {string.Join(' ', Names(parse.CommandResult.Command))} --help.");
             return ExitCode.WrongCommandLine;
         }
         try
@@ -45,6 +46,10 @@ public static class CommandLine
         foreach (HelpOption help in root.Options.OfType<HelpOption>()) help.Action = new ExampleHelp((HelpAction)help.Action!);
         return root;
     }
+
+    private static IEnumerable<string> Messages(ParseResult parse) => parse.CommandResult.Command is RootCommand
+        ? [parse.UnmatchedTokens is [var word, ..] ? $"'{word}' is no command or option of permute" : "no command was given"]
+        : parse.Errors.Select(e => e.Message.TrimEnd('.')).Distinct();
 
     private static IEnumerable<string> Names(Command command) => command is RootCommand ? ["permute"] : ["permute", command.Name];
 }

@@ -27,12 +27,13 @@ internal static class Opt
     public static Option<bool> Flag(string name, string description) => new(name) { Description = description };
 
     public static Option<T> One<T>(string name, string value, string description, Func<ArgumentResult, T> parse) =>
-        new(name) { HelpName = value, Description = description, CustomParser = parse! };
+        new(name) { HelpName = value, Description = description, CustomParser = parse!, Arity = ArgumentArity.ExactlyOne };
 
     public static Option<string> Choice(string name, string standard, string description, params string[] choices)
     {
-        var option = new Option<string>(name) { Description = description, DefaultValueFactory = _ => standard };
-        return option.AcceptOnlyFromAmong(choices);
+        Option<string> option = One(name, string.Join('/', choices), description, r => Values.Choice(r, choices));
+        option.DefaultValueFactory = _ => standard;
+        return option;
     }
 
     public static Option<int> Threads()
@@ -59,7 +60,7 @@ internal static class Opt
 
     private static Option<T[]> Many<T>(string name, string value, string description, Func<ArgumentResult, T[]> parse)
     {
-        Option<T[]> option = One(name, value, description, parse);
+        Option<T[]> option = One(name, $"{value}…", description, parse);
         option.Arity = ArgumentArity.OneOrMore;
         option.AllowMultipleArgumentsPerToken = true;
         option.DefaultValueFactory = _ => [];

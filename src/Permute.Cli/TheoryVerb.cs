@@ -36,16 +36,19 @@ internal static class TheoryVerb
                 Mask = region,
                 Resels = parse.GetValue(resels) is [var r0, var r1, var r2, var r3] ? new ReselCounts(r0, r1, r2, r3) : null,
                 Voxels = parse.GetResult(voxels) is null ? null : parse.GetValue(voxels),
-                FwhmMm = parse.GetValue(fwhm),
-                FwhmVoxels = parse.GetValue(fwhmVoxels),
+                FwhmMm = Given(parse.GetValue(fwhm)),
+                FwhmVoxels = Given(parse.GetValue(fwhmVoxels)),
                 DegreesOfFreedom = parse.GetValue(df),
                 Alpha = parse.GetValue(alpha) ?? 0.05,
                 Direction = Enum.Parse<Direction>(parse.GetValue(direction)!, ignoreCase: true),
-                FormingP = parse.GetValue(formingP) is { Length: > 0 } p ? p : null,
-                FormingValues = parse.GetValue(formingValue) is { Length: > 0 } u ? u : null,
+                FormingP = Given(parse.GetValue(formingP)),
+                FormingValues = Given(parse.GetValue(formingValue)),
             }), parse.GetValue(json));
             return ExitCode.Done;
         });
         return verb;
     }
+
+    /// <summary>The parser hands out an empty list for an option that was not given.</summary>
+    private static double[]? Given(double[]? numbers) => numbers is { Length: > 0 } ? numbers : null;
 }

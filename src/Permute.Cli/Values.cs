@@ -10,6 +10,14 @@ internal static class Values
 
     public static string[] Texts(ArgumentResult result) => Words(result);
 
+    /// <summary>One of <paramref name="choices"/>.</summary>
+    public static string Choice(ArgumentResult result, string[] choices)
+    {
+        if (Words(result) is not [var word, ..]) return choices[0];
+        if (!choices.Contains(word)) result.AddError($"{Name(result)} takes {string.Join(", ", choices[..^1])} or {choices[^1]}, but got '{word}'");
+        return word;
+    }
+
     public static double? Number(ArgumentResult result) => Numbers(result) is [var number, ..] ? number : null;
 
     public static double[] Numbers(ArgumentResult result) => Numbers(result, Words(result));
@@ -40,7 +48,7 @@ internal static class Values
     {
         if (Words(result) is not [var word, ..]) return 0;
         if (!long.TryParse(word, NumberStyles.AllowLeadingSign, CultureInfo.InvariantCulture, out long value) || value < least || value > most)
-            result.AddError($"{Name(result)} takes a whole number, but got '{word}'");
+            result.AddError($"{Name(result)} takes a whole number written in digits, but got '{word}'");
         return value;
     }
 
