@@ -35,6 +35,24 @@ internal unsafe interface ISubsetSums : IDisposable
     int CountAbove(bool both, float* observed, float margin, float* counts, int* places);
 }
 
+/// <summary>Whether both signs count: a constant to the compiler.</summary>
+internal interface IWays
+{
+    static abstract bool Both { get; }
+}
+
+/// <summary>Sums count as they are.</summary>
+internal readonly struct OneWay : IWays
+{
+    public static bool Both => false;
+}
+
+/// <summary>Sums count by their size.</summary>
+internal readonly struct BothWays : IWays
+{
+    public static bool Both => true;
+}
+
 /// <inheritdoc cref="ISubsetSums"/>
 internal sealed unsafe class SubsetSums<TLanes, TVector> : ISubsetSums
     where TLanes : struct, ILanes<TVector>
@@ -106,8 +124,11 @@ internal sealed unsafe class SubsetSums<TLanes, TVector> : ISubsetSums
         }
     }
 
+    public int AboveFloor(bool both, float* floor, int* places) =>
+        both ? AboveFloor<BothWays>(floor, places) : AboveFloor<OneWay>(floor, places);
+
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    public int AboveFloor(bool both, float* floor, int* places)
+    private int AboveFloor<TWays>(float* floor, int* places) where TWays : struct, IWays
     {
         int groups = plan.Bits.Length, outer = plan.Outer, inner = groups - outer, runs = tile.RunStarts.Length - 1;
         var table = (byte*)tables;
@@ -117,26 +138,30 @@ internal sealed unsafe class SubsetSums<TLanes, TVector> : ISubsetSums
         {
             for (int run = 0; run < runs; run++)
             {
-                int p = starts[run], end = starts[run + 1];
+                nint p = starts[run], end = starts[run + 1];
                 uint* at = offset + p * groups;
                 Outer(table, at, outer, out TVector a0, out TVector a1, out TVector a2, out TVector a3);
                 at += outer;
                 for (; p < end; p++, at += groups)
                 {
                     Inner(table, at, inner, a0, a1, a2, a3, out TVector v0, out TVector v1, out TVector v2, out TVector v3);
-                    if (both) (v0, v1, v2, v3) = (TLanes.Abs(v0), TLanes.Abs(v1), TLanes.Abs(v2), TLanes.Abs(v3));
+                    if (TWays.Both) (v0, v1, v2, v3) = (TLanes.Abs(v0), TLanes.Abs(v1), TLanes.Abs(v2), TLanes.Abs(v3));
                     TVector best = TLanes.Max(TLanes.Max(v0, v1), TLanes.Max(v2, v3));
-                    *next = p;
-                    if (TLanes.Above(best, TLanes.All(floor[p])) != 0) next++;
+                    if (TLanes.Above(best, TLanes.All(floor[p])) != 0) *next++ = (int)p;
                 }
             }
         }
         return (int)(next - places);
     }
 
-    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     public int AboveFloorAndLimits(
-        bool both, float* floor, int* places, ReadOnlySpan<float> limits, ulong* words, int stride, int shift)
+        bool both, float* floor, int* places, ReadOnlySpan<float> limits, ulong* words, int stride, int shift) => both
+        ? AboveFloorAndLimits<BothWays>(floor, places, limits, words, stride, shift)
+        : AboveFloorAndLimits<OneWay>(floor, places, limits, words, stride, shift);
+
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
+    private int AboveFloorAndLimits<TWays>(
+        float* floor, int* places, ReadOnlySpan<float> limits, ulong* words, int stride, int shift) where TWays : struct, IWays
     {
         int groups = plan.Bits.Length, outer = plan.Outer, inner = groups - outer, count = tile.Count, planes = limits.Length;
         var table = (byte*)tables;
@@ -152,15 +177,14 @@ internal sealed unsafe class SubsetSums<TLanes, TVector> : ISubsetSums
                 Outer(table, at, outer, out TVector a0, out TVector a1, out TVector a2, out TVector a3);
                 Inner(table, at + outer, inner, a0, a1, a2, a3, out TVector v0, out TVector v1, out TVector v2, out TVector v3);
                 ulong* word = words + p;
-                if (both)
+                if (TWays.Both)
                 {
                     ulong* sign = word + (long)planes * stride;
                     *sign = (*sign & keep) | (Join(TLanes.Negative(v0), TLanes.Negative(v1), TLanes.Negative(v2), TLanes.Negative(v3)) << shift);
                     (v0, v1, v2, v3) = (TLanes.Abs(v0), TLanes.Abs(v1), TLanes.Abs(v2), TLanes.Abs(v3));
                 }
                 TVector best = TLanes.Max(TLanes.Max(v0, v1), TLanes.Max(v2, v3));
-                *next = p;
-                if (TLanes.Above(best, TLanes.All(floor[p])) != 0) next++;
+                if (TLanes.Above(best, TLanes.All(floor[p])) != 0) *next++ = p;
                 for (int j = 0; j < planes; j++, word += stride)
                 {
                     TVector u = TLanes.All(limit[j]);
@@ -237,6 +261,16 @@ internal sealed unsafe class SubsetSums<TLanes, TVector> : ISubsetSums
         v1 = TLanes.Load(x + TLanes.Count);
         v2 = TLanes.Load(x + 2 * TLanes.Count);
         v3 = TLanes.Load(x + 3 * TLanes.Count);
+        // Two groups, as 14 to 20 images have, without a loop.
+        if (groups == 2)
+        {
+            x = (float*)(table + at[1]);
+            v0 = TLanes.Add(a0, TLanes.Add(v0, TLanes.Load(x)));
+            v1 = TLanes.Add(a1, TLanes.Add(v1, TLanes.Load(x + TLanes.Count)));
+            v2 = TLanes.Add(a2, TLanes.Add(v2, TLanes.Load(x + 2 * TLanes.Count)));
+            v3 = TLanes.Add(a3, TLanes.Add(v3, TLanes.Load(x + 3 * TLanes.Count)));
+            return;
+        }
         for (int g = 1; g < groups; g++)
         {
             x = (float*)(table + at[g]);

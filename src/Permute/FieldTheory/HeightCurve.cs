@@ -17,7 +17,7 @@ internal sealed class HeightCurve
         for (int i = 2; Math.Sinh(i * Step) < Farthest; i++)
         {
             double after = Ec(Math.Sinh(i * Step));
-            if (after == 0 && here == 0) break;
+            if (after == 0 && Field.UpperTail(Math.Sinh(i * Step)) == 0) break;
             if (here >= before && here > after) peaks.Add(Top(Math.Sinh((i - 2) * Step), Math.Sinh(i * Step)));
             (before, here) = (here, after);
         }
@@ -39,7 +39,7 @@ internal sealed class HeightCurve
     }
 
     /// <summary>min(1, sup over v ≥ u of sides × E[EC](v)), not below 0.</summary>
-    public double P(double u, int sides) => Math.Clamp(sides * Supremum(u), 0, 1);
+    public double P(double u, int sides) => double.IsPositiveInfinity(u) ? 0 : Math.Clamp(sides * Supremum(u), 0, 1);
 
     /// <summary>The smallest u ≥ 0 with p(u) ≤ alpha: the last place where the curve comes down through it. Null when it never does.</summary>
     public double? Threshold(double alpha, int sides)
@@ -63,7 +63,7 @@ internal sealed class HeightCurve
 
     private double Supremum(double u)
     {
-        double best = Ec(u);
+        double best = double.IsNegativeInfinity(u) ? Resels.R0 : Ec(u); // far below, the whole region is above
         foreach (var (v, ec) in peaks) if (v > u) best = Math.Max(best, ec);
         return best;
     }

@@ -9,6 +9,7 @@ internal sealed class HeightFindings
     private readonly ParametricSide theory;
     private readonly double[] evidence, adjusted;
     private readonly Dictionary<int, double> stepDown = [];
+    private readonly double[]? uncorrected, falseDiscovery;
     private readonly double critical;
 
     public HeightFindings(InferenceInput input, ParametricSide theory, RuleRows rules)
@@ -18,6 +19,8 @@ internal sealed class HeightFindings
         var maxima = new NullDistribution(input.Maxima.Height.AsSpan(0, count), input.Exhaustive);
         evidence = Evidence.Of(input.Model.Direction, input.Observed);
         adjusted = [.. evidence.Select(e => AdjustedP.Of(maxima, e))];
+        uncorrected = input.UncorrectedCounts?.Select(c => (double)Math.Max(1, c) / count).ToArray();
+        falseDiscovery = uncorrected == null ? null : BenjaminiHochberg.Adjust(uncorrected);
         critical = CriticalValue.Of(maxima, rules.Alpha);
         if (input.StepDown is { } counts)
         {
@@ -36,7 +39,11 @@ internal sealed class HeightFindings
             surviving,
             input.StepDown == null ? null : Math.Max(surviving, stepDown.Values.Count(p => p <= rules.Alpha)),
             theory.Height is { } u ? evidence.Count(e => Ties.Reaches(e, u)) : null,
-            evidence.Count(e => Ties.Reaches(e, theory.Bonferroni)));
+            evidence.Count(e => Ties.Reaches(e, theory.Bonferroni)))
+        {
+            FalseDiscoveryPermutation = falseDiscovery?.Count(p => p <= rules.Alpha),
+            FalseDiscoveryParametric = BenjaminiHochberg.Rejected(evidence, rules.Alpha, theory.HeightAt),
+        };
     }
 
     public HeightSummary Summary { get; }
@@ -47,7 +54,7 @@ internal sealed class HeightFindings
     public void AddMaps(Dictionary<string, double[]> maps)
     {
         maps["height-p"] = adjusted;
-        if (input.UncorrectedCounts != null) maps["uncorrected-p"] = [.. Enumerable.Range(0, evidence.Length).Select(v => UncorrectedAt(v)!.Value)];
+        if (uncorrected != null) maps["uncorrected-p"] = uncorrected;
         if (theory.Height is { } u) maps["agreement"] = Agreement.Map(evidence, critical, u);
     }
 
@@ -57,8 +64,7 @@ internal sealed class HeightFindings
         theory.HeightP(evidence[voxel]),
         theory.BonferroniP(evidence[voxel]));
 
-    public double? UncorrectedAt(int voxel) =>
-        input.UncorrectedCounts is { } counts ? (double)Math.Max(1, counts[voxel]) / input.Maxima.Count : null;
+    public double? UncorrectedAt(int voxel) => uncorrected?[voxel];
 
     public IReadOnlyList<VariableSummary> Variables() =>
         [.. input.Study.Variables.Select((name, v) => new VariableSummary
@@ -68,6 +74,7 @@ internal sealed class HeightFindings
             Estimate = input.Estimate[v],
             Sign = Evidence.Sign(input.Observed[v]),
             UncorrectedP = UncorrectedAt(v),
+            FalseDiscoveryP = falseDiscovery?[v],
             AdjustedP = AdjustedAt(v),
         })];
 }

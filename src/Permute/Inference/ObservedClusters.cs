@@ -20,27 +20,18 @@ public sealed record ObservedClusters(ObservedAbove Above, IReadOnlyList<Observe
     /// <summary>Forms them on the signed map <paramref name="t"/> (length V), numbered from <paramref name="firstId"/>.</summary>
     public static ObservedClusters Form(Mask mask, double[] t, ObservedAbove above, int neighbours, int firstId)
     {
-        var found = new List<(ObservedCluster Cluster, int[] Labels, int Label)>();
-        foreach (var (sign, voxels) in new[] { (1, above.Positive), (-1, above.Negative) })
-        {
-            if (voxels.Length == 0) continue;
-            var labels = ClusterLabels.Find(mask, voxels, neighbours);
-            found.AddRange(Describe(labels, t, sign, above.FormingStatistic).Select((c, i) => (c, labels.Labels, i + 1)));
-        }
+        ClusterLabels?[] labels = [Labels(above.Positive), Labels(above.Negative)];
+        ClusterLabels? Labels(bool[] voxels) => voxels.Length == 0 ? null : ClusterLabels.Find(mask, voxels, neighbours);
+        var ranked = labels
+            .SelectMany((l, side) => l == null ? [] : Describe(l, t, side == 0 ? 1 : -1, above.FormingStatistic).Select((cluster, at) => (cluster, side, at)))
+            .OrderByDescending(c => c.cluster.Voxels).ThenByDescending(c => Math.Abs(t[c.cluster.Peak])).ThenBy(c => c.cluster.Peak)
+            .Select((c, rank) => (Cluster: c.cluster with { Id = firstId + rank }, c.side, c.at)).ToArray();
+        int[][] idOf = [.. labels.Select(l => new int[1 + (l?.Sizes.Length ?? 0)])];
+        foreach (var (cluster, side, at) in ranked) idOf[side][1 + at] = cluster.Id;
         var ids = new int[mask.Count];
-        var clusters = new List<ObservedCluster>();
-        var idOf = new Dictionary<(int[], int), int>();
-        foreach (var (cluster, labels, label) in found.OrderByDescending(f => f.Cluster.Voxels)
-            .ThenByDescending(f => Math.Abs(t[f.Cluster.Peak])).ThenBy(f => f.Cluster.Peak))
-        {
-            int id = firstId + clusters.Count;
-            clusters.Add(cluster with { Id = id });
-            idOf[(labels, label)] = id;
-        }
-        foreach (int[] labels in found.Select(f => f.Labels).Distinct())
-            for (int v = 0; v < ids.Length; v++)
-                if (labels[v] != 0) ids[v] = idOf[(labels, labels[v])];
-        return new ObservedClusters(above, clusters, ids);
+        for (int v = 0; v < ids.Length; v++)
+            ids[v] = Math.Max(labels[0] is { } up ? idOf[0][up.Labels[v]] : 0, labels[1] is { } down ? idOf[1][down.Labels[v]] : 0);
+        return new ObservedClusters(above, [.. ranked.Select(c => c.Cluster)], ids);
     }
 
     private static ObservedCluster[] Describe(ClusterLabels labels, double[] t, int sign, double u)

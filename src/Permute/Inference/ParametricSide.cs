@@ -50,6 +50,9 @@ public sealed class ParametricSide
     /// <summary>Bonferroni-adjusted p of a height in evidence units.</summary>
     public double BonferroniP(double u) => FieldTheory.Bonferroni.P(field, voxels, u, sides);
 
+    /// <summary>The evidence that has an uncorrected parametric p, of the test made, of <paramref name="p"/>.</summary>
+    public double HeightAt(double p) => field.Quantile(p / sides);
+
     /// <summary>The p in each tail of a forming value.</summary>
     public double TailP(double u) => field.UpperTail(u);
 

@@ -4,7 +4,7 @@ namespace Permute.Inference;
 internal static class ResidualChecks
 {
     private const double SkewnessLimit = 0.5, VarianceLimit = 2, OutlierLimit = 3.5;
-    private const int FewestForOutliers = 6;
+    private const int FewestImages = 6, FewestVoxels = 50; // an image's mean and spread over less say little
 
     public static IEnumerable<CheckSummary> Of(InferenceInput input)
     {
@@ -12,7 +12,7 @@ internal static class ResidualChecks
         if (sample.Voxels.Count == 0) yield break;
         if (input.Model.Relabelings.Kind == "sign flips") yield return Symmetry(sample.Skewness);
         else if (input.Model is { Groups.Count: 2, Codes: { } codes }) yield return EqualVariances(sample, codes, input.Model.Groups);
-        if (input.Model.Images < FewestForOutliers) yield break;
+        if (input.Model.Images < FewestImages || sample.Voxels.Count < FewestVoxels) yield break;
         yield return Outlier("image-mean-outlying", "mean", sample.ImageMeans, input.Study.Rows);
         yield return Outlier("image-spread-outlying", "spread", [.. sample.ImageSquares.Select(v => Math.Log(Math.Max(v, 1e-300)) / 2)], input.Study.Rows);
     }

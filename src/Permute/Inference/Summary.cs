@@ -376,6 +376,9 @@ public sealed record VariableSummary
     /// <summary>Uncorrected permutation p.</summary>
     public required double? UncorrectedP { get; init; }
 
+    /// <summary>The uncorrected p adjusted for the false discovery rate (Benjamini &amp; Hochberg 1995), when recorded.</summary>
+    public double? FalseDiscoveryP { get; init; }
+
     /// <summary>Adjusted p.</summary>
     public required PeakP AdjustedP { get; init; }
 }
@@ -407,7 +410,15 @@ public sealed record CheckSummary
 /// <param name="StepDown">By step-down.</param>
 /// <param name="FieldTheory">By the field-theory threshold; null without one.</param>
 /// <param name="Bonferroni">By Bonferroni; null without one.</param>
-public sealed record SurvivorSummary(int Permutation, int? StepDown, int? FieldTheory, int? Bonferroni);
+public sealed record SurvivorSummary(int Permutation, int? StepDown, int? FieldTheory, int? Bonferroni)
+{
+    /// <summary>With the false discovery rate at α (Benjamini &amp; Hochberg 1995) on the uncorrected permutation p; null unless those were recorded. At a smallest p of 1/N
+    /// about V/(αN) voxels must reach it before anything is found.</summary>
+    public int? FalseDiscoveryPermutation { get; init; }
+
+    /// <summary>The same on the parametric p of each voxel.</summary>
+    public int? FalseDiscoveryParametric { get; init; }
+}
 
 /// <summary>Where the numbers come from.</summary>
 public sealed record ProvenanceSummary

@@ -91,7 +91,10 @@ internal sealed class Answer(Summary s)
             {
                 case "height":
                     int? many = method switch { Words.Permutation => s.Survivors?.Permutation, Words.FieldTheory => s.Survivors?.FieldTheory, _ => s.Survivors?.Bonferroni };
-                    if (r.AdjustedP <= s.Alpha) counts.Add((many is int n ? $"{Show.Plural(n, one)} of {Show.Count(s.Data.Voxels)}" : $"the highest {one}") + Verb(many ?? 1) + " by height");
+                    if (!(r.AdjustedP <= s.Alpha)) break;
+                    string more = method == Words.Permutation && s.Survivors?.StepDown > many ? $" ({Show.Count(s.Survivors.StepDown)} with step-down)" : "";
+                    counts.Add((many is int n ? $"{Show.Count(n)} of {Show.Plural(s.Data.Voxels, one)}" : $"the highest {one}") + Verb(many ?? 1) +
+                        (s.Variables.Count > 0 ? "" : " by height") + more);
                     break;
                 case "extent":
                     var formed = s.Clusters.Where(c => c.FormingStatistic == r.FormingStatistic).ToArray();
@@ -122,11 +125,11 @@ internal sealed class Answer(Summary s)
     {
         var own = rules.First(o => o.Measure == r.Measure && o.FormingStatistic == r.FormingStatistic && o.Method == Words.Permutation);
         Func<double?, string> show = r.Measure == "extent" ? v => $"{Show.Count(v)} voxels" : Show.Value;
-        string judged = r.Verdict is null ? "" : $" {(r.Verdict == "agrees" ? "agrees with α" : r.Verdict)} here, broken in {Percent(r.EmpiricalFwer)} of the relabelings.";
+        string judged = r.Verdict is null ? "" : $" {(r.Verdict == "agrees" ? "agrees with α" : r.Verdict)} (broken in {Percent(r.EmpiricalFwer)} of relabelings).";
         string text = $"{Capital(Name(r))}: {r.Method} asks for {show(r.Threshold)}, the relabelings for {(r.AtLeast && own.AtLeast ? "" : "more than ")}{show(own.Threshold)};{judged}".TrimEnd(';');
         if (r.Remark is not null) text += $" ({r.Remark})";
         if (r is { Measure: "height", Method: Words.FieldTheory } && r.Threshold > s.Height.Bonferroni?.Critical)
-            text += " It lies above Bonferroni's: the images are too rough, or too few, for it to help.";
-        return r.Diagnosis?.Reading is { } reading && said.Add(reading) ? $"{text} {reading}" : text;
+            text += " It lies above Bonferroni's, as it does with rough images or few of them.";
+        return r.Diagnosis?.Reading is { } reading ? $"{text} {(said.Add(reading) ? reading : "The same reading holds.")}" : text;
     }
 }

@@ -20,7 +20,7 @@ internal static class ExceedanceFigure
         double[] sorted = [.. maxima.Where(double.IsFinite).Order()];
         var marks = Marks(s);
         var (from, to) = Range(sorted, marks);
-        double lowest = 0.5 / maxima.Length;
+        double lowest = Math.Min(0.5 / maxima.Length, s.Alpha / 2);
         bool wide = from > 0 && to > 50 * from;
 
         var model = FigureStyle.Model(new OxyThickness(Left, Top, Right, Bottom));

@@ -25,7 +25,7 @@ internal static class ExtentFigure
         (up.Position, up.Minimum, up.Maximum, up.StringFormat) = (AxisPosition.Left, floor, ceiling, "#,0.##");
         (up.MajorGridlineStyle, up.MajorGridlineColor) = (LineStyle.Solid, FigureStyle.Faint);
         model.Axes.Add(FigureStyle.Styled(up, log ? "extent, voxels (logarithmic)" : "extent, voxels"));
-        var across = new CategoryAxis { Position = AxisPosition.Bottom, MajorTickSize = 0 };
+        var across = new CategoryAxis { Position = AxisPosition.Bottom, MajorTickSize = 0, Minimum = -0.75, Maximum = entries.Count - 0.25 };
         across.Labels.AddRange(entries.Select(e => Label(e)));
         model.Axes.Add(FigureStyle.Styled(across, s.Model.Direction == "both" ? "cluster-forming threshold (p two-sided)" : "cluster-forming threshold"));
         model.Legends.Add(new Legend
@@ -61,8 +61,10 @@ internal static class ExtentFigure
             {
                 Text = values[i] is double v ? Show.Count(v) : Show.None,
                 TextPosition = new DataPoint(i + shift, drawn ? values[i]!.Value : floor),
-                Offset = new ScreenVector(0, drawn ? -10 : -4),
-                TextVerticalAlignment = VerticalAlignment.Bottom,
+                // Outward of the markers at the sides, so that no interval's bar runs through a number.
+                Offset = new ScreenVector(drawn ? 12 * Math.Sign(shift) : 0, !drawn ? -4 : shift == 0 ? -10 : 0),
+                TextHorizontalAlignment = !drawn || shift == 0 ? HorizontalAlignment.Center : shift < 0 ? HorizontalAlignment.Right : HorizontalAlignment.Left,
+                TextVerticalAlignment = drawn && shift != 0 ? VerticalAlignment.Middle : VerticalAlignment.Bottom,
                 TextColor = colour,
                 StrokeThickness = 0,
                 ClipByXAxis = false,

@@ -59,7 +59,7 @@ public static partial class HtmlReport
                 [
                     r.Measure == "extent" ? $"{name}: smallest surviving extent" : name, r.Method, (r.AtLeast || r.Threshold is null ? "" : "above ") + show(r.Threshold),
                     Show.Interval(r.Interval, show), show(r.Observed), Show.P(r.AdjustedP, s.Alpha), Show.Interval(r.AdjustedPInterval, p => Show.P(p, s.Alpha)),
-                    Show.Percent(r.EmpiricalFwer, s.Alpha), Show.Interval(r.EmpiricalFwerInterval, p => Show.Percent(p, s.Alpha)), r.Verdict ?? "", r.Remark ?? "",
+                    r.EmpiricalFwer is null ? "" : Show.Percent(r.EmpiricalFwer, s.Alpha), Show.Interval(r.EmpiricalFwerInterval, p => Show.Percent(p, s.Alpha)), r.Verdict ?? "", r.Remark ?? "",
                 ];
             }));
         if (answer.EmpiricalFwer is { } sentence) page.Paragraph(sentence);
@@ -78,7 +78,6 @@ public static partial class HtmlReport
                 Row("", "clusters", e.Diagnosis.ClusterCount, "the lattice, holes in the mask or roughness"),
                 Row("", "voxels per cluster", e.Diagnosis.VoxelsPerCluster, "smoothness, or its long tails"),
             }));
-        page.List(s.Extent.Where(e => e.Diagnosis.Reading is not null).Select(e => $"At {Words.FormingShort(e.FormingP, e.FormingStatistic)}: {e.Diagnosis.Reading}"));
     }
 
     private static void Checks(HtmlPage page, Summary s)

@@ -70,7 +70,7 @@ public static partial class Screen
                 ? $"{Words.Measure(own.Measure)}, critical {(own.Measure == "height" ? Words.Evidence(s.Model) : "value")}" : "  critical value";
             if (own.FormingStatistic is not null) rows.Add([$"{Words.Measure(own.Measure)} at {Words.Forming(own, s.Model)}", "", "", ""]);
             rows.Add([name, Value(own), Value(theory), Value(bonferroni)]);
-            if (own.Interval is not null) rows.Add(["  95 % Monte Carlo interval", Show.Interval(own.Interval, v => Number(own, v)), "", ""]);
+            if (own.Interval is not null) rows.Add(["  95 % Monte Carlo interval", $"{Number(own, own.Interval[0])}–{Number(own, own.Interval[1])}", "", ""]);
             if (theory?.EmpiricalFwer is not null || bonferroni?.EmpiricalFwer is not null)
                 rows.Add(["  empirical FWER", "", Fwer(theory, s.Alpha), Fwer(bonferroni, s.Alpha)]);
         }

@@ -100,6 +100,30 @@ public class PublishedTables
         Check(Enumerate(rows, model), Reference.Json("digits-two-sample.json").GetProperty("exact"), direction);
     }
 
+    // Counts over all swaps from SciPy's labelling: digits-two-sample.json says how.
+    [Theory]
+    [InlineData("4", 6)]
+    [InlineData("8", 18)]
+    public void The_digits_largest_clusters_over_all_swaps_match_the_expected_histogram(string key, int neighbours)
+    {
+        var (rows, model, mask) = Digits(Direction.Greater);
+        JsonElement clusters = Reference.Json("digits-two-sample.json").GetProperty("clusters");
+        JsonElement expected = clusters.GetProperty("connectivity").GetProperty(key);
+        RunResult run = Made.Run(
+            rows, model, mask, int.MaxValue, [clusters.Double("threshold_t")], neighbours, mass: true, threads: 2, stepDown: 0, chunk: 1 << 16);
+        ClusterMaxima found = run.Maxima.Clusters[0];
+        int[] histogram = expected.Ints("histogram_of_max_extent_all_relabelings");
+        Assert.Equal(histogram, Enumerable.Range(0, histogram.Length).Select(e => found.Extent.Count(x => x == e)));
+        foreach (JsonElement cluster in expected.GetProperty("observed_clusters").EnumerateArray())
+        {
+            double mass = cluster.Double("mass_sum_t_minus_u");
+            Assert.Equal(cluster.Int("count_extent_ge_exact"), found.Extent.Count(e => e >= cluster.Int("extent")));
+            Assert.Equal(cluster.Int("count_mass_sum_t_minus_u_ge_exact"), found.Mass!.Count(m => m >= mass - 1e-9 * Math.Max(1, mass)));
+        }
+        Assert.Equal(expected.GetProperty("observed_clusters").EnumerateArray().Max(c => c.Int("extent")), found.Extent[0]);
+        Assert.Equal(expected.GetProperty("observed_clusters").GetArrayLength(), found.ClusterCount[0]);
+    }
+
     /// <summary>The kept pixels of the digits, and the mask they lie in.</summary>
     internal static (double[][] Rows, Model Model, Mask Mask) Digits(Direction direction)
     {

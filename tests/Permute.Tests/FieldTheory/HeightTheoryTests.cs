@@ -138,6 +138,18 @@ public class HeightTheoryTests
         Assert.Contains("-2, 0.01, 0, 0", reason);
     }
 
+    // A voxel without any residual variance has an infinite T, which is legal.
+    [Fact]
+    public void An_infinite_height_has_p_0()
+    {
+        foreach (Field f in new Field[] { new GaussianField(), new TField(11), new FField(2, 11), new ChiSquareField(3) })
+        {
+            Assert.Equal(0, HeightTheory.P(Brainlike, f, double.PositiveInfinity, 2));
+            Assert.Equal(0, Bonferroni.P(f, 1000, double.PositiveInfinity, 2));
+        }
+        Assert.Equal(1, HeightTheory.P(Brainlike, new TField(11), double.NegativeInfinity, 2));
+    }
+
     // Common practice, no source.
     [Fact]
     public void A_larger_region_raises_the_threshold_and_more_smoothness_lowers_it()

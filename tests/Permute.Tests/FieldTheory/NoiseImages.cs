@@ -23,31 +23,26 @@ internal sealed class NoiseImages
         for (int i = 0; i < e.Length; i++) e[i] = images[i][voxel];
     }
 
-    // The images are cut from the middle of larger ones, so that the edges are as rough as the rest.
+    // On a torus, so that the edges are as rough as the rest.
     private static double[] Smooth(Philox random, int side, double[] fwhm)
     {
-        int margin = (int)Math.Ceiling(fwhm.Sum(f => 1.5 * f)), wide = side + 2 * margin;
-        var data = new double[wide * wide * wide];
+        var data = new double[side * side * side];
         for (int i = 0; i < data.Length; i++) data[i] = Normal(ref random);
         foreach (double f in fwhm)
-            foreach (int step in new[] { 1, wide, wide * wide })
-                data = Along(data, step, wide, f);
-        var cut = new double[side * side * side];
-        for (int z = 0, i = 0; z < side; z++)
-            for (int y = 0; y < side; y++)
-                for (int x = 0; x < side; x++) cut[i++] = data[x + margin + wide * (y + margin + wide * (z + margin))];
-        return cut;
+            foreach (int step in new[] { 1, side, side * side })
+                data = Along(data, step, side, f);
+        return data;
     }
 
-    private static double[] Along(double[] data, int step, int wide, double fwhm)
+    private static double[] Along(double[] data, int step, int side, double fwhm)
     {
         double[] kernel = Kernel(fwhm);
         int reach = kernel.Length / 2;
         var smoothed = new double[data.Length];
         for (int i = 0; i < data.Length; i++)
         {
-            int at = i / step % wide;
-            for (int k = Math.Max(-reach, -at); k <= Math.Min(reach, wide - 1 - at); k++) smoothed[i] += kernel[k + reach] * data[i + k * step];
+            int at = i / step % side, start = i - at * step;
+            for (int k = -reach; k <= reach; k++) smoothed[i] += kernel[k + reach] * data[start + (at + k + side) % side * step];
         }
         return smoothed;
     }

@@ -75,6 +75,14 @@ public class TheoryAloneTests
         Assert.NotNull(slice.Height.FieldTheory.Critical);
     }
 
+    // Common practice, no source.
+    [Fact]
+    public void Ten_voxels_at_a_FWHM_of_two_and_a_half_are_four_resels()
+    {
+        var row = new TheoryRequest { Mask = TheoryValues.Box(10, 1, 1), FwhmVoxels = [2.5, 1, 1], DegreesOfFreedom = 10 };
+        Assert.Equal(4, TheoryAlone.Of(row).Smoothness.VolumeInResels!.Value, 12);
+    }
+
     [Fact]
     public void No_more_degrees_of_freedom_than_dimensions_is_refused() => Refused(Slab with { DegreesOfFreedom = 3 }, "3 degrees of freedom are too few");
 

@@ -31,6 +31,18 @@ public class BenjaminiHochbergTests
         return Enumerable.Range(0, p.Length).All(i => adjusted[i] <= rate == (k > 0 && p[i] <= sorted[k - 1]));
     }
 
+    [Property(MaxTest = 100)]
+    public bool The_number_rejected_by_height_is_that_of_the_adjusted_p(int seed)
+    {
+        var random = new Philox(seed, 8);
+        double[] z = new double[1 + random.Below(200)];
+        double shift = 3 * random.Uniform();
+        for (int i = 0; i < z.Length; i++) z[i] = random.Normal() + (i % 3 == 0 ? shift : 0);
+        double[] p = [.. z.Select(v => MathNet.Numerics.Distributions.Normal.CDF(0, 1, -v))];
+        int rejected = BenjaminiHochberg.Rejected(z, 0.1, tail => -MathNet.Numerics.Distributions.Normal.InvCDF(0, 1, tail));
+        return rejected == BenjaminiHochberg.Adjust(p).Count(q => q <= 0.1);
+    }
+
     [Fact]
     public void Nothing_adjusts_to_nothing() => Assert.Empty(BenjaminiHochberg.Adjust([]));
 }

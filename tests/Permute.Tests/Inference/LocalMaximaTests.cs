@@ -59,6 +59,6 @@ public class LocalMaximaTests
         Assert.Equal([1, 2], all[0].Clusters);
         Assert.Equal([1], all[1].Clusters);
         Assert.Equal([59, 0, 0], all[0].Index);
-        Assert.Equal(1.59, all[0].Value);
+        Assert.Equal(t[59], all[0].Value);
     }
 }

@@ -23,7 +23,7 @@ public class ObservedClustersTests
         double[][] t = [.. labels.Select(row => Swapped(mask, pixels, row))];
 
         var maxima = Some.Clusters(mask, t, 2.5, both: false, neighbours);
-        Assert.Equal(expected.Ints("fixed_list_max_size"), maxima.Extent);
+        Assert.Equal(expected.Ints("fixed_list_max_extent"), maxima.Extent);
 
         var formed = ObservedClusters.Form(mask, t[0], new ObservedAbove(2.5, null, null, [.. t[0].Select(v => v > 2.5)], []), neighbours, 1);
         var extents = NullDistribution.OfExtents(maxima.Extent, true);
@@ -33,12 +33,26 @@ public class ObservedClustersTests
         for (int c = 0; c < rows.Count; c++)
         {
             Assert.Equal(c + 1, rows[c].Id);
-            Assert.Equal(reference[c].Int("size"), rows[c].Voxels);
+            Assert.Equal(reference[c].Int("extent"), rows[c].Voxels);
             Assert.Equal(reference[c].Double("mass_sum_t_minus_u"), rows[c].Mass, 1e-9);
             Assert.Equal(reference[c].Double("peak"), rows[c].Peak, 1e-9);
             Assert.Equal([reference[c].Ints("peak_index")[1], reference[c].Ints("peak_index")[0], 0], rows[c].PeakIndex);
-            Assert.Equal(reference[c].Int("count_size_ge_in_fixed_list") / 1000.0, rows[c].AdjustedP.Permutation);
+            Assert.Equal(reference[c].Int("count_extent_ge_in_fixed_list") / 1000.0, rows[c].AdjustedP.Permutation);
         }
+    }
+
+    // The same images, all 2,704,156 label swaps: how often each largest extent occurs (NumPy enumeration).
+    [Theory]
+    [InlineData("4")]
+    [InlineData("8")]
+    public void The_exact_distribution_of_extents_gives_the_reference_critical_value_and_p(string joined)
+    {
+        JsonElement expected = Reference.Json("digits-two-sample.json").GetProperty("clusters").GetProperty("connectivity").GetProperty(joined);
+        int[] extents = [.. expected.Ints("histogram_of_max_extent_all_relabelings").SelectMany((count, extent) => Enumerable.Repeat(extent, count))];
+        var all = NullDistribution.OfExtents(extents, true);
+        Assert.Equal(expected.Double("max_extent_critical_0p05"), CriticalValue.Of(all, 0.05));
+        foreach (var cluster in expected.GetProperty("observed_clusters").EnumerateArray())
+            Assert.Equal(cluster.Double("p_extent_exact"), AdjustedP.OfExtent(all, cluster.Int("extent")), 1e-12);
     }
 
     [Fact]

@@ -39,7 +39,11 @@ public class PublishedTableTests
         var strict = FindingsBuilder.Build(input with { Request = input.Request with { Alpha = 0.01 } });
         Assert.Equal(maxima.Double("critical_0p01"), strict.Summary.Height.Permutation.Critical!.Value, 1e-9);
         int surviving = expected.Ints("count_fwer_single_step").Count(c => c <= 204);
-        Assert.Equal(new SurvivorSummary(surviving, surviving, null, found.Summary.Survivors!.Bonferroni), found.Summary.Survivors);
+        SurvivorSummary survivors = found.Summary.Survivors!;
+        Assert.Equal((surviving, surviving, null), (survivors.Permutation, survivors.StepDown, survivors.FieldTheory));
+        double[] falseDiscovery = BenjaminiHochberg.Adjust([.. expected.Ints("count_uncorrected").Select(c => c / 4096.0)]);
+        Assert.Equal(falseDiscovery, found.Summary.Variables.Select(v => v.FalseDiscoveryP!.Value));
+        Assert.Equal(falseDiscovery.Count(p => p <= 0.05), survivors.FalseDiscoveryPermutation);
         Assert.Empty(found.Maps);
         Assert.Contains("table of variables", found.Summary.Height.FieldTheory!.Reason);
     }
