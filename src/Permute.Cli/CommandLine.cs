@@ -47,9 +47,14 @@ public static class CommandLine
         return root;
     }
 
-    private static IEnumerable<string> Messages(ParseResult parse) => parse.CommandResult.Command is RootCommand
-        ? [parse.UnmatchedTokens is [var word, ..] ? $"'{word}' is no command or option of permute" : "no command was given"]
-        : parse.Errors.Select(e => e.Message.TrimEnd('.')).Distinct();
+    private static IEnumerable<string> Messages(ParseResult parse)
+    {
+        Command command = parse.CommandResult.Command;
+        // A mistyped option draws complaints about its values too; the first word that is not understood is the one to name.
+        if (parse.UnmatchedTokens is [var word, ..])
+            return [$"'{word}' is no {(command is RootCommand ? "command" : "option or argument")} of {string.Join(' ', Names(command))}"];
+        return command is RootCommand ? ["no command was given"] : parse.Errors.Select(e => e.Message.TrimEnd('.')).Distinct();
+    }
 
     private static IEnumerable<string> Names(Command command) => command is RootCommand ? ["permute"] : ["permute", command.Name];
 }

@@ -19,13 +19,14 @@ internal static class Faults
                 foreach (string line in fault.Message.Split('\n')) session.Say(line);
                 return ExitCode.UnusableInput;
             case IOException or UnauthorizedAccessException:
-                session.Say($"{OneLine(fault)}; check that the disk has room and that the folder may be written.");
+                session.Say($"reading or writing failed: {OneLine(fault)}; check that the disk has room and that the folder may be written.");
                 return ExitCode.UnusableInput;
             case OutOfMemoryException:
                 session.Say("the memory does not suffice; give a smaller --mask or fewer --threads (permute preview says how much is needed).");
                 return ExitCode.UnusableInput;
             default:
-                session.Say($"a fault of ours ({fault.GetType().Name}: {OneLine(fault)}); please report it with your command, and with what PERMUTE_TRACE=1 adds.");
+                session.Say($"a fault of ours ({fault.GetType().Name}: {OneLine(fault)}); "
+                    + "please report it with your command, and with what PERMUTE_TRACE=1 adds.");
                 return ExitCode.OurFault;
         }
     }

@@ -10,7 +10,8 @@ internal static class FinishVerb
     {
         var run = new Argument<string>("RUN") { Description = "The run folder." };
         Option<bool> json = Opt.Json();
-        var verb = new Verb("finish", "Report from the relabelings done so far (all or a part of them); the last of three steps.", "permute finish my-run")
+        var verb = new Verb(
+            "finish", "Report from the relabelings done so far (all or a part of them); the last of three steps.", "permute finish my-run")
         {
             run, json,
         };

@@ -17,7 +17,8 @@ internal static class PrepareVerb
             AnalysisRequest request = options.Bind(parse);
             string run = ProgressDisplay.While(session, progress => Analysis.Prepare(request, progress, session.Cancel));
             session.Output.WriteLine(run);
-            session.Say($"prepared; go on with `{Quoting.Command(["work", run])}` (on one machine or, with --part and --of, on many), then `{Quoting.Command(["finish", run])}`.");
+            session.Say($"prepared; go on with `{Quoting.Command(["work", run])}` (on one machine or, with --part and --of, on many), "
+                + $"then `{Quoting.Command(["finish", run])}`.");
             return ExitCode.Done;
         });
         return verb;

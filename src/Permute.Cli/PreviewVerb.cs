@@ -9,7 +9,8 @@ internal static class PreviewVerb
     public static Command Create(Session session)
     {
         var verb = new Verb(
-            "preview", "What test would do and whether it can work: design, smallest attainable p, mask and its losses, time and memory. Nothing is written.",
+            "preview", "What test would do and whether it can work: design, smallest attainable p, mask and its losses, time and memory. "
+            + "Nothing is written.",
             "permute preview --study study.tsv --effect group --levels trained,untrained");
         var options = new AnalysisOptions();
         Option<bool> json = Opt.Flag("--json", "Print the preview as JSON on standard output.");

@@ -2,7 +2,9 @@ using System.Runtime.InteropServices;
 
 namespace Permute.Cli;
 
-/// <summary>Turns Ctrl-C and SIGTERM into a cancellation, so that the chunks at hand are put away in peace. Asked a second time, the process ends at once.</summary>
+/// <summary>
+/// Turns Ctrl-C and SIGTERM into a cancellation, so that the work ends in peace. Asked a second time, the process ends at once.
+/// </summary>
 internal sealed class StopSignals : IDisposable
 {
     private readonly CancellationTokenSource source = new();

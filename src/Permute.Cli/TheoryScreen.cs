@@ -1,5 +1,6 @@
 using System.Globalization;
 using Permute.FieldTheory;
+using static System.FormattableString;
 
 namespace Permute.Cli;
 
@@ -8,17 +9,15 @@ internal static class TheoryScreen
 {
     public static void Write(TheoryResult t, TextWriter to)
     {
-        void Line(FormattableString line) => to.WriteLine(line.ToString(CultureInfo.InvariantCulture).TrimEnd());
+        void Line(FormattableString line) => to.WriteLine(Invariant(line).TrimEnd());
 
-        Line($"Thresholds by theory alone: t with {t.DegreesOfFreedom} degrees of freedom, {Direction(t.Direction)}, family-wise error rate {t.Alpha}");
+        Line($"Thresholds by theory alone: t with {t.DegreesOfFreedom} degrees of freedom, {Direction(t.Direction)}");
+        Line($"alpha       {t.Alpha}, family-wise error rate");
         Line($"region      {t.Voxels:N0} voxels in {t.RegionDimensions} dimensions, resel counts {Numbers(t.Smoothness.ReselCounts!, "0.###")}");
-        if (t.Smoothness.FwhmVoxels.Any(f => f != null))
+        for (int axis = 0; axis < 3; axis++)
         {
-            for (int axis = 0; axis < 3; axis++)
-            {
-                if (t.Smoothness.FwhmVoxels[axis] is double width)
-                    Line($"FWHM {"xyz"[axis]}      {width:0.###} voxels{(t.Smoothness.FwhmMm[axis] is double mm ? FormattableString.Invariant($", {mm:0.###} mm") : "")}");
-            }
+            string mm = t.Smoothness.FwhmMm[axis] is double length ? Invariant($", {length:0.###} mm") : "";
+            if (t.Smoothness.FwhmVoxels[axis] is double width) Line($"FWHM {"xyz"[axis]}      {width:0.###} voxels{mm}");
         }
         to.WriteLine();
         Line($"{"height",-26}{"survives above",16}");
@@ -29,8 +28,9 @@ internal static class TheoryScreen
         Line($"{"  forming threshold",-26}{"surviving",16}{"voxels above",16}{"clusters",11}{"voxels each",14}");
         foreach (TheoryExtent e in t.Extent)
         {
-            string forming = e.FormingP is double p ? FormattableString.Invariant($"  p {p}, u {e.FormingStatistic:0.0000}") : FormattableString.Invariant($"  u {e.FormingStatistic:0.####}");
-            Line($"{forming,-26}{Number(e.FieldTheory.SmallestSurviving, "N0"),16}{e.ExpectedVoxelsAbove,16:N1}{e.ExpectedClusters,11:N1}{Number(e.ExpectedVoxelsPerCluster, "N1"),14}{Why(e.FieldTheory.Reason)}");
+            string u = Number(e.FormingStatistic, "0.0000"), forming = e.FormingP is double p ? Invariant($"  p {p}, u {u}") : $"  u {u}";
+            string extent = Number(e.FieldTheory.SmallestSurviving, "N0"), each = Number(e.ExpectedVoxelsPerCluster, "N1");
+            Line($"{forming,-26}{extent,16}{e.ExpectedVoxelsAbove,16:N1}{e.ExpectedClusters,11:N1}{each,14}{Why(e.FieldTheory.Reason)}");
         }
         to.WriteLine();
         to.WriteLine("A research statistic, not for the diagnosis or care of a person.");

@@ -3,7 +3,9 @@ using System.Globalization;
 
 namespace Permute.Cli;
 
-/// <summary>From the words of the command line to values, in the invariant culture. A word that begins with -- is a mistyped option, never a value.</summary>
+/// <summary>
+/// From the words of the command line to values, in the invariant culture. A word that begins with -- is a mistyped option, never a value.
+/// </summary>
 internal static class Values
 {
     public static string? Text(ArgumentResult result) => Words(result) is [var word, ..] ? word : null;
@@ -40,7 +42,8 @@ internal static class Values
     {
         if (Words(result) is not [var word]) return [];
         string[] names = word.Split(',', StringSplitOptions.TrimEntries);
-        if (names.Length != 2 || names.Contains("")) result.AddError($"{Name(result)} takes two levels separated by a comma, such as before,after, but got '{word}'");
+        if (names.Length != 2 || names.Contains(""))
+            result.AddError($"{Name(result)} takes two levels separated by a comma, such as before,after, but got '{word}'");
         return names;
     }
 
@@ -68,7 +71,10 @@ internal static class Values
     {
         string[] words = [.. result.Tokens.Select(t => t.Value)];
         foreach (string word in words.Where(w => w.StartsWith("--", StringComparison.Ordinal)))
-            result.AddError($"{word} is no option of this command (it stood where {Name(result)} takes a value; a file of that name can be given as ./{word})");
+        {
+            result.AddError($"{word} is no option of this command (it stood where {Name(result)} takes a value; "
+                + $"a file of that name can be given as ./{word})");
+        }
         return words;
     }
 

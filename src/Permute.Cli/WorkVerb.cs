@@ -11,7 +11,8 @@ internal static class WorkVerb
         Option<int> part = Opt.Whole("--part", "I", "Which part of the relabelings to make, from 1.", 1);
         Option<int> of = Opt.Whole("--of", "N", "Into how many parts the relabelings are split.", 1);
         Option<int> threads = Opt.Threads();
-        var verb = new Verb("work", "Make the relabelings that a prepared run still lacks; the second of three steps.", "permute work my-run --part 3 --of 16")
+        var verb = new Verb(
+            "work", "Make the relabelings that a prepared run still lacks; the second of three steps.", "permute work my-run --part 3 --of 16")
         {
             run, part, of, threads,
         };

@@ -38,7 +38,8 @@ public class HelpTests
         Cli.Result help = await Cli.Run("--help");
 
         Assert.Equal(0, help.Code);
-        foreach (string verb in (string[])["test", "prepare", "work", "finish", "preview", "theory", "demo"]) Assert.Contains($"\n  {verb} ", help.Out);
+        foreach (string verb in (string[])["test", "prepare", "work", "finish", "preview", "theory", "demo"])
+            Assert.Contains($"\n  {verb} ", help.Out);
     }
 
     [Theory]

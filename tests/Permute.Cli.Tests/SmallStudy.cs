@@ -1,4 +1,5 @@
 using System.Globalization;
+using Permute.Data;
 using Permute.Design;
 using Permute.Nifti;
 
@@ -17,7 +18,7 @@ internal static class SmallStudy
             var values = new double[6 * 5 * 4];
             for (int v = 0; v < values.Length; v++) values[v] = random.Normal() + (v == 33 ? 2 : 0);
             string file = $"walk-{i:00}.nii.gz";
-            NiftiFile.Write(scratch[file], NiftiFile.For([6, 5, 4], new double[,] { { 2, 0, 0, 0 }, { 0, 2, 0, 0 }, { 0, 0, 2, 0 }, { 0, 0, 0, 1 } }), values);
+            NiftiFile.Write(scratch[file], NiftiFile.For([6, 5, 4], Grid.Plain(6, 5, 4, 2, 2, 2).Affine), values);
             lines.Add(string.Create(CultureInfo.InvariantCulture, $"{file}\t{(i < images / 2 ? "wet" : "dry")}\t{random.Uniform():0.000}"));
         }
         File.WriteAllLines(scratch["study.tsv"], lines);

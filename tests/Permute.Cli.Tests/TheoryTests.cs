@@ -1,4 +1,5 @@
 using System.Text.Json;
+using Permute.Data;
 using Permute.Nifti;
 
 namespace Permute.Cli.Tests;
@@ -58,9 +59,7 @@ public sealed class TheoryTests : IDisposable
     [Fact]
     public async Task A_mask_gives_its_own_resel_counts()
     {
-        NiftiFile.Write(
-            scratch["box.nii"], NiftiFile.For([7, 5, 4], new double[,] { { 2, 0, 0, 0 }, { 0, 2, 0, 0 }, { 0, 0, 2, 0 }, { 0, 0, 0, 1 } }),
-            [.. Enumerable.Repeat(1.0, 140)]);
+        WriteOnes("box.nii", 7, 5, 4);
 
         JsonElement json = await Json("--mask", scratch["box.nii"], "--assume-fwhm", "6,6,6", "--df", "20");
 
@@ -77,7 +76,7 @@ public sealed class TheoryTests : IDisposable
 
         Assert.Equal((0, ""), (result.Code, result.Err));
         Assert.Matches(@"field theory +6\.9268\n", result.Out);
-        Assert.Matches(@"  u 3 +\d+ ", result.Out);
+        Assert.Matches(@"  u 3\.0000 +\d+ ", result.Out);
         Assert.Contains("not for the diagnosis or care", result.Out);
     }
 
@@ -89,7 +88,7 @@ public sealed class TheoryTests : IDisposable
     [InlineData("alpha", "--df", "9", "--resels", "1,2,3,4", "--voxels", "9", "--alpha", "0")]
     public async Task What_theory_cannot_answer_ends_with_3(string named, params string[] args)
     {
-        NiftiFile.Write(scratch["m.nii"], NiftiFile.For([3, 3, 3], new double[,] { { 1, 0, 0, 0 }, { 0, 1, 0, 0 }, { 0, 0, 1, 0 }, { 0, 0, 0, 1 } }), [.. Enumerable.Repeat(1.0, 27)]);
+        WriteOnes("m.nii", 3, 3, 3);
 
         Cli.Result result = await Cli.Run(["theory", .. args.Select(a => a == "MASK" ? scratch["m.nii"] : a)]);
 
@@ -100,14 +99,17 @@ public sealed class TheoryTests : IDisposable
     [Fact]
     public async Task A_mask_of_four_dimensions_is_refused()
     {
-        NiftiFile.Write(
-            scratch["four.nii"], NiftiFile.For([2, 2, 2, 3], new double[,] { { 1, 0, 0, 0 }, { 0, 1, 0, 0 }, { 0, 0, 1, 0 }, { 0, 0, 0, 1 } }), [.. Enumerable.Repeat(1.0, 24)]);
+        WriteOnes("four.nii", 2, 2, 2, 3);
 
         Cli.Result result = await Cli.Run("theory", "--mask", scratch["four.nii"], "--assume-fwhm", "3,3,3", "--df", "9");
 
         Assert.Equal(ExitCode.UnusableInput, result.Code);
         Assert.Contains("2 × 2 × 2 × 3", Assert.Single(result.Complaints));
     }
+
+    /// <summary>An image of ones, its voxels 2 mm long.</summary>
+    private void WriteOnes(string name, params long[] size) =>
+        NiftiFile.Write(scratch[name], NiftiFile.For(size, Grid.Plain(1, 1, 1, 2, 2, 2).Affine), [.. Enumerable.Repeat(1.0, (int)size.Aggregate((a, b) => a * b))]);
 
     private static async Task<JsonElement> Json(params string[] args)
     {

@@ -23,6 +23,9 @@ public class WrongCommandLineTests
     [InlineData("--direction takes greater, less or both, but got 'sideways'", "test", "--images", "a.nii", "--direction", "sideways")]
     [InlineData("--df", "theory", "--resels", "1,2,3,4", "--voxels", "9")]
     [InlineData("RUN", "work")]
+    [InlineData("--alpha", "test", "--images", "a.nii", "--alpha", "0.05", "--alpha", "0.01")]
+    [InlineData("0.01", "test", "--images", "a.nii", "--alpha", "0.05", "0.01")]
+    [InlineData("--adjust", "test", "--images", "a.nii", "--seed", "1", "--adjust", "age")]
     public async Task A_wrong_command_line_ends_with_2_and_one_line_of_why(string why, params string[] args)
     {
         Cli.Result result = await Cli.Run(args);

@@ -42,10 +42,11 @@ internal static class DemoStudy
 
     private static string Table(string run) => Path.Combine(run, "study", "study.tsv");
 
-    private static NiftiHeader Header(string name) => NiftiFile.For([TeaTasters.Grid.Nx, TeaTasters.Grid.Ny, TeaTasters.Grid.Nz], TeaTasters.Grid.Affine) with
+    private static NiftiHeader Header(string name)
     {
-        Description = $"made-up data: {name}, after minus before",
-    };
+        Grid grid = TeaTasters.Grid;
+        return NiftiFile.For([grid.Nx, grid.Ny, grid.Nz], grid.Affine) with { Description = $"made-up data: {name}, after minus before" };
+    }
 
     private static double[] Image(ref Philox random)
     {

@@ -3,8 +3,10 @@ using Permute.Design;
 
 namespace Permute.Cli.Demo;
 
-/// <summary>Smooth Gaussian noise of mean 0 and variance 1: white noise under a Gaussian kernel, axis by axis. The grid is taken as a ring along each axis,
-/// so that the variance is the same everywhere.</summary>
+/// <summary>
+/// Smooth Gaussian noise of mean 0 and variance 1: white noise under a Gaussian kernel, axis by axis. The grid is taken as a ring along
+/// each axis, so that the variance is the same everywhere.
+/// </summary>
 internal static class SmoothNoise
 {
     /// <summary>One value per voxel of <paramref name="grid"/>, drawn from <paramref name="random"/>.</summary>
