@@ -3,7 +3,7 @@ using BenchmarkDotNet.Jobs;
 using BenchmarkDotNet.Running;
 using Permute.Bench;
 
-// ratios [REPEATS] [EXTENT-RELABELINGS] | growth | kernels | smoke
+// ratios [REPEATS] [EXTENT-RELABELINGS] | growth | tfce [RELABELINGS] | kernels | smoke
 string what = args.Length > 0 ? args[0] : "help";
 string root = Root();
 switch (what)
@@ -16,6 +16,9 @@ switch (what)
     case "growth":
         Growth.Run();
         return 0;
+    case "tfce":
+        Enhancement.Run(args.Length > 1 ? int.Parse(args[1]) : 200);
+        return 0;
     case "kernels":
         BenchmarkRunner.Run<KernelBenchmarks>();
         return 0;
@@ -24,7 +27,7 @@ switch (what)
         BenchmarkRunner.Run<KernelBenchmarks>(DefaultConfig.Instance.AddJob(Job.Dry));
         return 0;
     default:
-        Console.WriteLine("ratios [REPEATS] [EXTENT-RELABELINGS] | growth | kernels | smoke");
+        Console.WriteLine("ratios [REPEATS] [EXTENT-RELABELINGS] | growth | tfce [RELABELINGS] | kernels | smoke");
         return 2;
 }
 

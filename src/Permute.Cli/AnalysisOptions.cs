@@ -28,7 +28,9 @@ internal sealed class AnalysisOptions
     private readonly Option<string> direction = Opt.Direction();
     private readonly Option<string?> statistic = Opt.Text("--statistic", "t", "The statistic; t is the only one so far.");
     private readonly Option<string[]> record = Opt.Texts(
-        "--record", "MEASURE", "Measures: height, extent, mass, uncorrected; default height extent (tables: height uncorrected).");
+        "--record", "MEASURE", "Measures: height, extent, mass, tfce, uncorrected; default height extent (tables: height uncorrected).");
+    private readonly Option<double[]?> tfceExponents = Opt.List(
+        "--tfce-exponents", "E,H", 2, "Exponents of extent and height in tfce; default 0.5,2.");
     private readonly Option<double[]> formingP = Opt.FormingP();
     private readonly Option<double[]> formingValue = Opt.FormingValue();
     private readonly Option<int> neighbours = Opt.Whole(
@@ -50,8 +52,8 @@ internal sealed class AnalysisOptions
     {
         Option[] shared =
         [
-            images, study, variables, mask, effect, levels, asLevels, dropMissing, exchangeInside, direction, statistic, record, formingP,
-            formingValue, neighbours, relabelings, seed, threads, memory, alpha, assumeFwhm,
+            images, study, variables, mask, effect, levels, asLevels, dropMissing, exchangeInside, direction, statistic, record, tfceExponents,
+            formingP, formingValue, neighbours, relabelings, seed, threads, memory, alpha, assumeFwhm,
         ];
         foreach (Option option in writes ? [.. shared, folder, replace] : shared) verb.Options.Add(option);
         statistic.Validators.Add(r =>
@@ -80,6 +82,7 @@ internal sealed class AnalysisOptions
         Direction = Enum.Parse<Direction>(parse.GetValue(direction)!, ignoreCase: true),
         Statistic = parse.GetValue(statistic),
         Record = parse.GetValue(record) ?? [],
+        TfceExponents = parse.GetValue(tfceExponents) is [var e, var h] ? (e, h) : Standard.TfceExponents,
         FormingP = parse.GetValue(formingP) ?? [],
         FormingValue = parse.GetValue(formingValue) ?? [],
         Neighbours = parse.GetValue(neighbours),

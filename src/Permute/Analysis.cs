@@ -122,6 +122,7 @@ public static class Analysis
             Estimate = Estimate(run),
             Above = [.. run.Forming.Select((f, j) => loop.ObservedAbove(j) is var (positive, negative)
                 ? new ObservedAbove(f.Statistic, f.P, f.PPerTail, positive, negative) : null!)],
+            Enhanced = loop.Enhanced,
             StepDown = result.StepDown,
             UncorrectedCounts = result.Uncorrected,
             Smoothness = smoothness,

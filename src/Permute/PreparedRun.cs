@@ -51,6 +51,7 @@ internal sealed class PreparedRun : IDisposable
             FormingStatistics = [.. forming.Select(f => f.Statistic)],
             Neighbourhood = Neighbourhood.Of(request.Neighbours),
             Mass = spatial && Records(request, spatial, "mass"),
+            Tfce = spatial && Records(request, spatial, "tfce") ? request.TfceExponents : null,
             Uncorrected = Records(request, spatial, "uncorrected"),
             StepDown = spatial ? 1000 : int.MaxValue,
         };
@@ -101,6 +102,7 @@ internal sealed class PreparedRun : IDisposable
         text.Append(CultureInfo.InvariantCulture, $"\n{plan.Family.Kind} {plan.Count} {plan.Exhaustive} {plan.Seed}\n");
         foreach (double u in measures.FormingStatistics) text.Append(CultureInfo.InvariantCulture, $"{u:R} ");
         text.Append(CultureInfo.InvariantCulture, $"{measures.Neighbourhood.Count} {measures.Mass} {measures.Uncorrected} {measures.StepDown}\n");
+        if (measures.Tfce is var (e, h)) text.Append(CultureInfo.InvariantCulture, $"enhanced {e:R} {h:R}\n");
         using var hasher = IncrementalHash.CreateHash(HashAlgorithmName.SHA256);
         hasher.AppendData(Encoding.UTF8.GetBytes(text.ToString()));
         if (study.Mask != null) hasher.AppendData(System.Runtime.InteropServices.MemoryMarshal.AsBytes(study.Mask.Voxels.AsSpan()));

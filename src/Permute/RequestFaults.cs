@@ -5,7 +5,7 @@ namespace Permute;
 /// <summary>What is wrong with a request in itself, before any file is opened; all of it at once.</summary>
 public static class RequestFaults
 {
-    private static readonly string[] Offered = ["height", "extent", "mass", "uncorrected"];
+    private static readonly string[] Offered = ["height", "extent", "mass", "tfce", "uncorrected"];
 
     /// <summary>A sentence per fault; empty when there is none.</summary>
     public static IReadOnlyList<string> Of(AnalysisRequest request)
@@ -31,6 +31,10 @@ public static class RequestFaults
         Unless(request.Statistic is null or "t", $"--statistic {request.Statistic} is not offered yet; t is the only one so far.");
         foreach (string measure in request.Record)
             Unless(Offered.Contains(measure), $"--record {measure} is not offered; the measures are {string.Join(", ", Offered)}.");
+        Unless(request.Variables.Count == 0 || !request.Record.Contains("tfce"),
+            "--record tfce enhances clusters of neighbouring voxels, and the columns of a table have no neighbours; leave it out, or test images.");
+        Unless(request.TfceExponents is { E: > 0 and < double.PositiveInfinity, H: > 0 and < double.PositiveInfinity },
+            $"--tfce-exponents takes two positive numbers, E of the extent and H of the height, but was {request.TfceExponents.E},{request.TfceExponents.H}.");
         if (request.AssumeFwhmMm is { } fwhm)
             Unless(fwhm.Count == 3 && fwhm.All(f => f > 0 && double.IsFinite(f)), "--assume-fwhm takes three positive numbers in mm, separated by commas.");
         Unless(request.Effect != DesignReader.Mean || request.Adjust.Count == 0, "--adjust is not offered yet; leave it out.");

@@ -3,7 +3,7 @@ namespace Permute.Engine;
 /// <summary>The recorded maxima of a range of relabelings, and the counts over it: what one chunk file holds.</summary>
 internal sealed class Chunk
 {
-    public Chunk(int first, int count, int thresholds, bool mass, int stepDown, int uncorrected)
+    public Chunk(int first, int count, int thresholds, bool mass, int stepDown, int uncorrected, bool tfce = false)
     {
         (First, Count) = (first, count);
         Height = new double[count];
@@ -11,6 +11,7 @@ internal sealed class Chunk
         Clusters = Fill<int>(thresholds, count);
         Voxels = Fill<int>(thresholds, count);
         Mass = mass ? Fill<double>(thresholds, count) : null;
+        Tfce = tfce ? new double[count] : null;
         StepDown = new int[stepDown];
         Uncorrected = new int[uncorrected];
     }
@@ -35,6 +36,9 @@ internal sealed class Chunk
 
     /// <summary>Largest mass, when recorded.</summary>
     public double[][]? Mass { get; }
+
+    /// <summary>Largest enhanced value of each, when recorded.</summary>
+    public double[]? Tfce { get; }
 
     /// <summary>Per ranked voxel, relabelings of this chunk whose successive maximum reaches it.</summary>
     public int[] StepDown { get; }

@@ -19,7 +19,7 @@ internal static class ChunkFile
         Span<byte> head = stackalloc byte[HeadLength];
         head.Clear();
         Magic.CopyTo(head);
-        int[] shape = [chunk.First, chunk.Count, chunk.Extent.Length, chunk.Mass == null ? 0 : 1, chunk.StepDown.Length, chunk.Uncorrected.Length];
+        int[] shape = [chunk.First, chunk.Count, chunk.Extent.Length, chunk.Mass == null ? 0 : 1, chunk.StepDown.Length, chunk.Uncorrected.Length, chunk.Tfce == null ? 0 : 1];
         for (int i = 0; i < shape.Length; i++) BinaryPrimitives.WriteInt32LittleEndian(head[(8 + 4 * i)..], shape[i]);
         stream.Write(head);
         stream.Write(fingerprint);
@@ -35,9 +35,9 @@ internal static class ChunkFile
         if (file.Length < HeadLength + 2 * HashLength || !file[..8].SequenceEqual(Magic)) return null;
         if (!SHA256.HashData(file[..^HashLength]).AsSpan().SequenceEqual(file[^HashLength..])) return null;
         fingerprint = file.Slice(HeadLength, HashLength).ToArray();
-        var shape = new int[6];
+        var shape = new int[7];
         for (int i = 0; i < shape.Length; i++) shape[i] = BinaryPrimitives.ReadInt32LittleEndian(file[(8 + 4 * i)..]);
-        var chunk = new Chunk(shape[0], shape[1], shape[2], shape[3] == 1, shape[4], shape[5]);
+        var chunk = new Chunk(shape[0], shape[1], shape[2], shape[3] == 1, shape[4], shape[5], shape[6] == 1);
         ReadOnlySpan<byte> rest = file[(HeadLength + HashLength)..^HashLength];
         foreach (Array array in Arrays(chunk))
         {
@@ -49,7 +49,7 @@ internal static class ChunkFile
     }
 
     private static IEnumerable<Array> Arrays(Chunk chunk) =>
-        [chunk.Height, .. chunk.Extent, .. chunk.Clusters, .. chunk.Voxels, .. chunk.Mass ?? [], chunk.StepDown, chunk.Uncorrected];
+        [chunk.Height, .. chunk.Extent, .. chunk.Clusters, .. chunk.Voxels, .. chunk.Mass ?? [], .. chunk.Tfce is { } tfce ? new Array[] { tfce } : [], chunk.StepDown, chunk.Uncorrected];
 
     private static Span<byte> Bytes(Array array) =>
         array is double[] doubles ? MemoryMarshal.AsBytes(doubles.AsSpan()) : MemoryMarshal.AsBytes(((int[])array).AsSpan());

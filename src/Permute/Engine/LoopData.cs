@@ -15,6 +15,7 @@ internal sealed class LoopData : IDisposable
         Limits = [.. measures.FormingStatistics.Select(u => (float)Packed.SumAt(u))];
         Observed = Observe(threads);
         Ranked = Rank(Observed, model.Direction, Math.Min(measures.StepDown, study.Voxels));
+        if (measures.Tfce is var (e, h)) (Enhancement, Enhanced, EnhancedMaximum) = Enhance(e, h);
         Top = new PackedData(study, model, Ranked, threads);
         IsRanked = new bool[study.Voxels];
         foreach (int v in Ranked) IsRanked[v] = true;
@@ -47,6 +48,15 @@ internal sealed class LoopData : IDisposable
 
     /// <summary>Signed T of each voxel as observed.</summary>
     public double[] Observed { get; }
+
+    /// <summary>How images are enhanced; null when that is not recorded.</summary>
+    public EnhancementPlan? Enhancement { get; }
+
+    /// <summary>Enhanced value of each voxel as observed, in double precision.</summary>
+    public double[]? Enhanced { get; }
+
+    /// <summary>The largest of them, 0 without one.</summary>
+    public double EnhancedMaximum { get; }
 
     /// <summary>The voxels with the highest evidence, highest first, ties by position.</summary>
     public int[] Ranked { get; }
@@ -86,6 +96,14 @@ internal sealed class LoopData : IDisposable
             for (int v = slab * Slab; v < Math.Min(Study.Voxels, (slab + 1) * Slab); v++) observed[v] = exact.Signed(v);
         });
         return observed;
+    }
+
+    private (EnhancementPlan, double[], double) Enhance(double e, double h)
+    {
+        var plan = new EnhancementPlan(Mask!, Measures.Neighbourhood, e, h);
+        var values = new double[Study.Voxels];
+        double[] heights = Model.Direction == Direction.Less ? [.. Observed.Select(t => -t)] : Observed;
+        return (plan, values, TfceWorker.Exactly(new EnhancedMap(plan), heights, Both, values));
     }
 
     private static int[] Rank(double[] observed, Direction direction, int count)

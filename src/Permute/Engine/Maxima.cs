@@ -11,6 +11,10 @@ public sealed record Maxima
     /// <summary>Largest statistic of each relabeling; double precision; +∞ is possible.</summary>
     public required double[] Height { get; init; }
 
+    /// <summary>Largest enhanced value of each relabeling; null unless threshold-free cluster enhancement was recorded. Double precision as observed and wherever that decides whether it
+    /// reaches the observed one; elsewhere from single-precision sums.</summary>
+    public double[]? Tfce { get; init; }
+
     /// <summary>What was recorded at each cluster-forming threshold, in the order asked.</summary>
     public IReadOnlyList<ClusterMaxima> Clusters { get; init; } = [];
 }

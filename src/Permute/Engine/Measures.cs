@@ -12,6 +12,9 @@ public sealed record Measures
     /// <summary>Also the largest cluster mass Σ(|T| − u) (Bullmore et al. 1999; Zhang et al. 2009).</summary>
     public bool Mass { get; init; }
 
+    /// <summary>Also the largest enhanced value (threshold-free cluster enhancement, Smith &amp; Nichols 2009), with these exponents of extent and height; null: not recorded.</summary>
+    public (double E, double H)? Tfce { get; init; }
+
     /// <summary>Also, per voxel, how many relabelings reach its observed value.</summary>
     public bool Uncorrected { get; init; }
 

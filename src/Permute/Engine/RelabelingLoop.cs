@@ -28,6 +28,9 @@ public sealed class RelabelingLoop : IDisposable
     /// <summary>Signed T of each voxel as observed, in double precision; length V.</summary>
     public double[] Observed => loop.Observed;
 
+    /// <summary>Enhanced value of each voxel as observed, length V, 0 where its side is not tested; null unless threshold-free cluster enhancement is recorded.</summary>
+    public double[]? Enhanced => loop.Enhanced;
+
     /// <summary>The voxels ranked for step-down, highest evidence first.</summary>
     public int[] Ranked => loop.Ranked;
 
@@ -37,7 +40,7 @@ public sealed class RelabelingLoop : IDisposable
 
     /// <summary>Bytes the loop holds: packed data and one worker a thread.</summary>
     public long Bytes => loop.Packed.Blocks * (long)loop.Packed.Images * SubjectMatrix.Lanes * sizeof(float)
-        + threads * TileSize * TileWorker.BytesPerRelabeling(loop.Planes, loop.Study.Voxels, loop.Ranked.Length);
+        + threads * (TileSize * TileWorker.BytesPerRelabeling(loop.Planes, loop.Study.Voxels, loop.Ranked.Length) + (loop.Enhancement is { } plan ? TfceWorker.Bytes(plan) : 0));
 
     /// <summary>All planned relabelings at once, without a folder.</summary>
     public RunResult Run(CancellationToken cancel = default)
@@ -70,7 +73,7 @@ public sealed class RelabelingLoop : IDisposable
     /// <summary>The time that all planned relabelings would take, from a short calibration on a share of them.</summary>
     internal TimeSpan Foresee(CancellationToken cancel)
     {
-        int share = Math.Min(loop.Plan.Count, Math.Clamp(TileSize * threads, 64, 1024));
+        int share = Math.Min(loop.Plan.Count, Math.Clamp(TileSize * threads, 64, loop.Enhancement == null ? 1024 : 64));
         var store = new FirstChunk(share);
         Fill(store, null, cancel);
         long start = Stopwatch.GetTimestamp();
@@ -139,7 +142,7 @@ public sealed class RelabelingLoop : IDisposable
         {
             lock (this)
                 return chunk ??= new Chunk(
-                    first, count, loop.Limits.Length, loop.Measures.Mass, loop.Ranked.Length, loop.Measures.Uncorrected ? loop.Study.Voxels : 0);
+                    first, count, loop.Limits.Length, loop.Measures.Mass, loop.Ranked.Length, loop.Measures.Uncorrected ? loop.Study.Voxels : 0, loop.Measures.Tfce != null);
         }
 
         public bool Finish() => Interlocked.Decrement(ref left) == 0;

@@ -29,6 +29,7 @@ public sealed record RunResult
             {
                 Count = chunks.Sum(c => c.Count),
                 Height = Join(c => c.Height),
+                Tfce = loop.Measures.Tfce == null ? null : Join(c => c.Tfce!),
                 Clusters =
                 [
                     .. loop.Measures.FormingStatistics.Select((u, j) => new ClusterMaxima

@@ -17,6 +17,7 @@ internal sealed unsafe class TileWorker : IDisposable
     private readonly ExactStatistic exact;
     private readonly ClusterScan? scan;
     private readonly StepDown stepDown;
+    private readonly TfceWorker? tfce;
     private readonly float* floor, highest, counted, watched;
     private readonly int* places;
     private readonly ulong* fresh, bits;
@@ -33,6 +34,7 @@ internal sealed unsafe class TileWorker : IDisposable
         sums = SubsetSums.Create(loop.Groups, loop.InstructionSet);
         exact = new ExactStatistic(loop.Study, loop.Model);
         stepDown = new StepDown(loop, sums, exact, capacity);
+        tfce = loop.Enhancement == null ? null : new TfceWorker(loop, sums, exact);
         best = new double[capacity];
         floor = Allocate<float>(capacity);
         highest = Allocate<float>(capacity);
@@ -58,6 +60,12 @@ internal sealed unsafe class TileWorker : IDisposable
     public void Run(Tile tile, Chunk chunk, Action<double> report, CancellationToken cancel)
     {
         sums.Take(tile);
+        if (tfce != null)
+        {
+            Action<double> all = report;
+            tfce.Run(tile, chunk, share => all(0.9 * share), cancel);
+            report = share => all(0.1 * share);
+        }
         for (int p = 0; p < tile.Count; p++) (floor[p], highest[p], best[p]) = (float.NegativeInfinity, float.NegativeInfinity, double.NegativeInfinity);
         if (NeedsAllVoxels)
             for (int first = 0; first < loop.Packed.Blocks; first += BlocksAtOnce)
@@ -88,6 +96,7 @@ internal sealed unsafe class TileWorker : IDisposable
     {
         sums.Dispose();
         stepDown.Dispose();
+        tfce?.Dispose();
         scan?.Dispose();
         NativeMemory.AlignedFree(floor);
         NativeMemory.AlignedFree(highest);

@@ -32,11 +32,14 @@ public static partial class FindingsBuilder
             if (input.Smoothness?.LocalResels is { Length: > 0 } resels) maps["local-resels"] = resels;
             var clusters = new ClusterFindings(input, mask, theory, rules);
             clusters.AddMaps(maps);
+            var enhanced = EnhancedFindings.Of(input, rules);
+            enhanced?.AddMaps(maps);
             int[] peaks = LocalMaxima.Find(mask, input.Observed, input.Model.Direction, input.Request.Neighbours);
             summary = summary with
             {
                 Extent = clusters.Extent,
                 Mass = clusters.Mass,
+                Tfce = enhanced?.Summary,
                 Clusters = clusters.Rows,
                 Peaks = PeakTable.Rows(mask, input.Observed, peaks, clusters.Formed, height.AdjustedAt, height.UncorrectedAt),
                 AgreementLabels = maps.ContainsKey("agreement") ? Agreement.Labels : summary.AgreementLabels,

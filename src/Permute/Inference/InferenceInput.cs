@@ -35,6 +35,9 @@ public sealed record InferenceInput
     /// <summary>The observed voxels above each forming threshold, in the order of <see cref="Maxima.Clusters"/>.</summary>
     public IReadOnlyList<ObservedAbove> Above { get; init; } = [];
 
+    /// <summary>Enhanced value of each voxel as observed, not negative; null unless threshold-free cluster enhancement was recorded.</summary>
+    public double[]? Enhanced { get; init; }
+
     /// <summary>Step-down counts of the highest voxels, or null.</summary>
     public StepDownCounts? StepDown { get; init; }
 

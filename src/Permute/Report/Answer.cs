@@ -62,7 +62,7 @@ internal sealed class Answer(Summary s)
     {
         var found = new[] { Words.FieldTheory, Words.Bonferroni }.Where(m => rules.Any(r => r.Method == m && r.Threshold is not null))
             .Select(m => rules.Any(r => r.Method == m && r.AdjustedP <= s.Alpha) ? $"by {m}, {Show.List(Counts(m))}" : $"by {m}, nothing survives").ToArray();
-        string? reason = rules.FirstOrDefault(r => r.Method == Words.FieldTheory && r.Threshold is null)?.Remark;
+        string? reason = rules.FirstOrDefault(r => r is { Method: Words.FieldTheory, Threshold: null } and not { Measure: "tfce" })?.Remark;
         if (found.Length > 0) yield return Capital($"{string.Join("; ", found)}.");
         if (reason is not null) yield return $"Field theory gives no figure: {reason}.";
     }

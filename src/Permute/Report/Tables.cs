@@ -55,6 +55,11 @@ public static class Tables
         using var gzip = new GZipStream(to, CompressionLevel.Optimal, leaveOpen: true);
         List<string> names = ["relabeling", "height"];
         List<Func<int, object?>> columns = [k => k, k => maxima.Height[k]];
+        if (maxima.Tfce is { } tfce)
+        {
+            names.Add("tfce");
+            columns.Add(k => tfce[k]);
+        }
         foreach (var c in maxima.Clusters)
         {
             string forming = Words.FormingFile(Finding.FormingP(s, c.FormingStatistic), c.FormingStatistic);

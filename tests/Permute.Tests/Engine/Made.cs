@@ -53,7 +53,8 @@ internal static class Made
     /// <summary>A run in memory.</summary>
     public static RunResult Run(
         double[][] rows, Model model, Mask? mask = null, int relabelings = 64, double[]? forming = null, int neighbours = 18, bool mass = false,
-        bool uncorrected = false, int threads = 1, InstructionSet? set = null, int? chunk = null, int stepDown = 1000, long seed = 3)
+        bool uncorrected = false, int threads = 1, InstructionSet? set = null, int? chunk = null, int stepDown = 1000, long seed = 3,
+        (double E, double H)? tfce = null)
     {
         using var data = SubjectMatrix.FromRows(rows);
         var measures = new Measures
@@ -63,6 +64,7 @@ internal static class Made
             Mass = mass,
             Uncorrected = uncorrected,
             StepDown = stepDown,
+            Tfce = tfce,
         };
         using var loop = new RelabelingLoop(data, mask, model, new RelabelingPlan(model.Relabelings, relabelings, seed), measures, threads, set);
         return chunk is int size ? loop.Run(size) : loop.Run();
