@@ -20,13 +20,17 @@ internal static class Enhancement
             }
     }
 
-    private static double Time(Work work, int relabelings, Direction direction, int neighbours)
+    /// <summary>What more relabelings cost, so that what is done once does not count.</summary>
+    private static double Time(Work work, int relabelings, Direction direction, int neighbours) =>
+        (Whole(work, 20 + relabelings, direction, neighbours) - Whole(work, 20, direction, neighbours)) / relabelings;
+
+    private static double Whole(Work work, int relabelings, Direction direction, int neighbours)
     {
         Model model = Questions.Mean(work.Data.Images, direction);
         var measures = new Measures { Neighbourhood = Neighbourhood.Of(neighbours), Tfce = (0.5, 2) };
         using var loop = new RelabelingLoop(work.Data, work.Mask, model, new RelabelingPlan(model.Relabelings, relabelings, 1), measures, 1);
         TimeSpan start = Process.GetCurrentProcess().TotalProcessorTime;
         loop.Run();
-        return (Process.GetCurrentProcess().TotalProcessorTime - start).TotalMilliseconds / relabelings;
+        return (Process.GetCurrentProcess().TotalProcessorTime - start).TotalMilliseconds;
     }
 }

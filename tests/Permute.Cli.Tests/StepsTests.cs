@@ -34,6 +34,25 @@ public sealed class StepsTests : IDisposable
     }
 
     [Fact]
+    public async Task Enhanced_values_are_recorded_judged_mapped_and_named_without_field_theory()
+    {
+        string study = SmallStudy.Write(scratch);
+        string[] args = ["--study", study, "--relabelings", "100", "--record", "height", "tfce"];
+        Cli.Result tested = await Cli.Run(["test", .. args, "--out", scratch["run"]]);
+        Cli.Result others = await Cli.Run(["test", .. args, "--tfce-exponents", "1,1.5", "--out", scratch["others"], "--json"]);
+
+        Assert.Equal((0, 0), (tested.Code, others.Code));
+        Assert.Contains("enhanced value, critical value", tested.Out);
+        Assert.Contains("no field theory for TFCE", tested.Out);
+        Assert.DoesNotContain("Field theory gives no figure", tested.Out);
+        foreach (string file in new[] { "maps/tfce.nii.gz", "maps/tfce-p.nii.gz" }) Assert.True(File.Exists(scratch[$"run/{file}"]), file);
+        Assert.Contains("no field theory for TFCE", File.ReadAllText(scratch["run/report.html"]));
+        JsonElement[] found = [.. new[] { File.ReadAllText(scratch["run/summary.json"]), others.Out }.Select(json => JsonDocument.Parse(json).RootElement.GetProperty("tfce"))];
+        Assert.All(found, t => Assert.InRange(t.GetProperty("permutation").GetProperty("adjustedP").GetDouble(), 0.01, 1));
+        Assert.NotEqual(found[0].GetProperty("observedMaximum").GetDouble(), found[1].GetProperty("observedMaximum").GetDouble());
+    }
+
+    [Fact]
     public async Task A_second_call_resumes_and_makes_no_relabeling_again()
     {
         string study = SmallStudy.Write(scratch);

@@ -23,6 +23,8 @@ public sealed class UnusableInputTests : IDisposable
     [Theory]
     [InlineData("alpha", "--alpha", "NaN")]
     [InlineData("forming-p", "--forming-p", "NaN")]
+    [InlineData("--tfce-exponents takes two positive numbers", "--tfce-exponents", "0,2")]
+    [InlineData("have no neighbours", "--variables", "rain", "--record", "tfce")]
     [InlineData("nowhere.nii.gz", "--mask", "nowhere.nii.gz")]
     [InlineData("'shoe size'", "--effect", "shoe size")]
     [InlineData("'arid'", "--effect", "weather", "--levels", "wet,arid")]

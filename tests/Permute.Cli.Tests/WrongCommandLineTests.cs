@@ -20,6 +20,7 @@ public class WrongCommandLineTests
     [InlineData("--levels takes two levels separated by a comma", "test", "--images", "a.nii", "--levels", "wet")]
     [InlineData("--assume-fwhm takes 3 numbers separated by commas, but got '8,8'", "test", "--images", "a.nii", "--assume-fwhm", "8,8")]
     [InlineData("--assume-fwhm", "test", "--images", "a.nii", "--assume-fwhm", "8,8,8", "--assume-fwhm", "9,9,9")]
+    [InlineData("--tfce-exponents takes 2 numbers separated by commas, but got '0.5'", "test", "--images", "a.nii", "--tfce-exponents", "0.5")]
     [InlineData("--direction takes greater, less or both, but got 'sideways'", "test", "--images", "a.nii", "--direction", "sideways")]
     [InlineData("--df", "theory", "--resels", "1,2,3,4", "--voxels", "9")]
     [InlineData("RUN", "work")]

@@ -1,6 +1,7 @@
 using System.Numerics;
 using System.Runtime.CompilerServices;
 using System.Runtime.InteropServices;
+using System.Runtime.Intrinsics.X86;
 
 namespace Permute.Engine;
 
@@ -12,6 +13,12 @@ namespace Permute.Engine;
 internal sealed unsafe class EnhancedMaximum : IDisposable
 {
     private const int Digit = 11, Digits = 3;
+
+    /// <summary>Labels are fetched so many voxels before they are needed: they lie all over memory.</summary>
+    private const int Ahead = 12, BeforeZ = 10, AfterZ = 13;
+
+    /// <summary>1 − r² counts as so much at least.</summary>
+    private const double Least = 1e-12;
     private readonly EnhancementPlan plan;
     private readonly double scale;
     private readonly int degreesOfFreedom;
@@ -40,7 +47,7 @@ internal sealed unsafe class EnhancedMaximum : IDisposable
     public double Height(double v)
     {
         double square = scale * scale * v * v;
-        return Math.Sqrt(degreesOfFreedom * square / Math.Max(1 - square, 1e-12));
+        return Math.Sqrt(degreesOfFreedom * square / Math.Max(1 - square, Least));
     }
 
     /// <summary>The largest enhanced value of the positive sums of <paramref name="image"/> (V of them), or of its negated sums; 0 without one. <paramref name="top"/> becomes the
@@ -112,17 +119,31 @@ internal sealed unsafe class EnhancedMaximum : IDisposable
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     private int Join(int count)
     {
-        int begun = 0;
-        uint around = plan.Around, faces = plan.Faces;
+        // Locals, since a store through a pointer would make the compiler load fields again.
+        (int begun, uint around, bool cubic) = (0, plan.Around, plan.IsCubic);
+        double square = scale * scale, nu = degreesOfFreedom;
+        ulong* keys = this.keys;
+        int* label = this.label;
+        byte* joined = this.joined;
+        Cluster* clusters = this.clusters;
         fixed (int* step = plan.Step, row = plan.RowBefore)
         fixed (uint* touching = plan.Touching)
         fixed (double* power = plan.SizePower)
             for (int i = count - 1; i >= 0; i--)
             {
+                if (Sse.IsSupported)
+                {
+                    int ahead = (int)(uint)keys[i >= Ahead ? i - Ahead : 0];
+                    Sse.Prefetch0(label + ahead);
+                    Sse.Prefetch0(label + ahead + step[BeforeZ]);
+                    Sse.Prefetch0(label + ahead + step[AfterZ]);
+                }
                 int cell = (int)(uint)keys[i];
-                double level = plan.HeightPower(Height(BitConverter.UInt32BitsToSingle((uint)(keys[i] >> 32))));
-                uint near = (Row(cell + row[0]) | Row(cell + row[1]) << 3 | Row(cell + row[2]) << 6 | Row(cell + row[3]) << 9 | Row(cell + row[4]) << 12
-                    | Row(cell + row[5]) << 15 | Row(cell + row[6]) << 18 | Row(cell + row[7]) << 21 | Row(cell + row[8]) << 24) & around;
+                double r = BitConverter.UInt32BitsToSingle((uint)(keys[i] >> 32)), rr = square * r * r, tt = nu * rr / Math.Max(1 - rr, Least);
+                double level = cubic ? tt * Math.Sqrt(tt) / 3 : plan.HeightPower(Math.Sqrt(tt));
+                uint near = (Row(joined, cell + row[0]) | Row(joined, cell + row[1]) << 3 | Row(joined, cell + row[2]) << 6 | Row(joined, cell + row[3]) << 9
+                    | Row(joined, cell + row[4]) << 12 | Row(joined, cell + row[5]) << 15 | Row(joined, cell + row[6]) << 18 | Row(joined, cell + row[7]) << 21
+                    | Row(joined, cell + row[8]) << 24) & around;
                 joined[cell >> 3] |= (byte)(1 << (cell & 7));
                 if (near == 0)
                 {
@@ -131,17 +152,18 @@ internal sealed unsafe class EnhancedMaximum : IDisposable
                     continue;
                 }
                 Cluster* root = null;
-                while (near != 0)
+                do
                 {
-                    // A face first: it touches most of the others, which are then known to be in the same cluster.
-                    int bit = BitOperations.TrailingZeroCount((near & faces) != 0 ? near & faces : near);
+                    // One along the row first: its label is at hand, and what it touches is known to be in the same cluster.
+                    int bit = BitOperations.TrailingZeroCount(near);
                     near &= ~touching[bit];
-                    Cluster* other = Root(label[cell + step[bit]]);
+                    Cluster* other = Root(clusters, label[cell + step[bit]]);
                     if (other == root) continue;
                     other->Best += power[other->Size] * (other->Level - level);
                     other->Level = level;
                     root = root == null ? other : Unite(root, other);
                 }
+                while (near != 0);
                 root->Size++;
                 label[cell] = root->Parent;
             }
@@ -158,10 +180,10 @@ internal sealed unsafe class EnhancedMaximum : IDisposable
 
     /// <summary>Which of three cells of a row have joined.</summary>
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    private uint Row(int cell) => (uint)(*(ushort*)(joined + (cell >> 3)) >> (cell & 7)) & 7;
+    private static uint Row(byte* joined, int cell) => (uint)(*(ushort*)(joined + (cell >> 3)) >> (cell & 7)) & 7;
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    private Cluster* Root(int c)
+    private static Cluster* Root(Cluster* clusters, int c)
     {
         while (clusters[c].Parent != c) c = clusters[c].Parent = clusters[clusters[c].Parent].Parent;
         return clusters + c;
@@ -176,6 +198,8 @@ internal sealed unsafe class EnhancedMaximum : IDisposable
         return large;
     }
 
+    // A power of two of bytes, so that an index is a shift.
+    [StructLayout(LayoutKind.Sequential, Size = 32)]
     private struct Cluster
     {
         /// <summary>Itself while it stands alone.</summary>

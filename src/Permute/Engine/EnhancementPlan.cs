@@ -20,18 +20,16 @@ internal sealed class EnhancementPlan
         int row = at.Max(a => a.X) - x0 + 2, slice = row * (at.Max(a => a.Y) - y0 + 2), lead = slice + row + 1;
         Cell = [.. at.Select(a => lead + a.X - x0 + row * (a.Y - y0) + slice * (a.Z - z0))];
         Cells = Cell[^1] + lead + 1;
-        for (int dz = -1; dz <= 1; dz++)
-            for (int dy = -1; dy <= 1; dy++)
-            {
-                RowBefore[3 * (dz + 1) + dy + 1] = dy * row + dz * slice - 1;
-                for (int dx = -1; dx <= 1; dx++) Step[Bit(dx, dy, dz)] = dx + dy * row + dz * slice;
-            }
+        for (int r = 0; r < 9; r++)
+        {
+            RowBefore[r] = RowsAround[r].Dy * row + RowsAround[r].Dz * slice - 1;
+            for (int x = 0; x < 3; x++) Step[3 * r + x] = RowBefore[r] + x;
+        }
         int reach = neighbourhood.Count switch { 6 => 1, 18 => 2, _ => 3 };
         for (int a = 0; a < 27; a++)
         {
-            int own = Axes(a, 13);
+            int own = Axes(a, 1);
             if (own >= 1 && own <= reach) Around |= 1u << a;
-            if (own == 1) Faces |= 1u << a;
             for (int b = 0; b < 27; b++)
                 if (Axes(a, b) <= reach) Touching[a] |= 1u << b;
         }
@@ -45,7 +43,7 @@ internal sealed class EnhancementPlan
     /// <summary>Cells of the padded lattice.</summary>
     public int Cells { get; }
 
-    /// <summary>Distance to each of the 27 cells around and including one, numbered (dx+1) + 3 (dy+1) + 9 (dz+1).</summary>
+    /// <summary>Distance to each of the 27 cells around and including one: nine rows of three, its own row first, then those that share a face with it.</summary>
     public int[] Step { get; } = new int[27];
 
     /// <summary>Distance to the first of the three cells of each of the nine rows around.</summary>
@@ -57,14 +55,14 @@ internal sealed class EnhancementPlan
     /// <summary>The neighbours among the 27, as bits.</summary>
     public uint Around { get; }
 
-    /// <summary>Those that share a face.</summary>
-    public uint Faces { get; }
-
     /// <summary>For each of the 27, itself and those of the others that are its neighbours.</summary>
     public uint[] Touching { get; } = new uint[27];
 
     /// <summary>size^E.</summary>
     public double[] SizePower { get; }
+
+    /// <summary>H is 2.</summary>
+    public bool IsCubic => h == 2;
 
     /// <summary>height^(H+1)/(H+1), the integral of h^H up to a height.</summary>
     public double HeightPower(double height) => h == 2 ? height * height * height / 3 : Math.Pow(height, h + 1) / (h + 1);
@@ -82,12 +80,12 @@ internal sealed class EnhancementPlan
         return raised - value + all * HeightPower(shift);
     }
 
-    private static int Bit(int dx, int dy, int dz) => dx + 1 + 3 * (dy + 1) + 9 * (dz + 1);
+    private static readonly (int Dy, int Dz)[] RowsAround = [(0, 0), (-1, 0), (1, 0), (0, -1), (0, 1), (-1, -1), (1, -1), (-1, 1), (1, 1)];
 
     /// <summary>Along how many axes two of the 27 differ; 4, so never neighbours, when they are two apart on any.</summary>
     private static int Axes(int a, int b)
     {
-        int x = Math.Abs(a % 3 - b % 3), y = Math.Abs(a / 3 % 3 - b / 3 % 3), z = Math.Abs(a / 9 - b / 9);
+        int x = Math.Abs(a % 3 - b % 3), y = Math.Abs(RowsAround[a / 3].Dy - RowsAround[b / 3].Dy), z = Math.Abs(RowsAround[a / 3].Dz - RowsAround[b / 3].Dz);
         return x > 1 || y > 1 || z > 1 ? 4 : x + y + z;
     }
 }

@@ -10,7 +10,7 @@ namespace Permute.Engine;
 internal sealed unsafe class TfceWorker : IDisposable
 {
     /// <summary>Images held: the tables of a block are built once for so many relabelings.</summary>
-    private const int ImagesAtOnce = 8;
+    private const int ImagesAtOnce = 16;
     private readonly LoopData loop;
     private readonly ISubsetSums sums;
     private readonly ExactStatistic exact;

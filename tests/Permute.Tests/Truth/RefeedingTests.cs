@@ -37,10 +37,12 @@ public class RefeedingTests
             Same(observed.Maxima.Height, again.Maxima.Height);
             Assert.Equal(observed.Maxima.Clusters[0].Extent.Order(), again.Maxima.Clusters[0].Extent.Order());
             Same(observed.Maxima.Clusters[0].Mass!, again.Maxima.Clusters[0].Mass!);
-            p.Add([P(again.Maxima.Height), P([.. again.Maxima.Clusters[0].Extent.Select(e => (double)e)]), P(again.Maxima.Clusters[0].Mass!)]);
+            // Enhanced values come from single precision unless near the observed one; with six images that is some 1e-4.
+            Same(observed.Maxima.Tfce!, again.Maxima.Tfce!, 1e-3);
+            p.Add([P(again.Maxima.Height), P([.. again.Maxima.Clusters[0].Extent.Select(e => (double)e)]), P(again.Maxima.Clusters[0].Mass!), P(again.Maxima.Tfce!)]);
         }
         foreach (double alpha in new[] { 0.05, 0.1, 0.25, 0.5 })
-            for (int measure = 0; measure < 3; measure++)
+            for (int measure = 0; measure < 4; measure++)
                 Assert.True(p.Count(x => x[measure] <= alpha) <= Math.Floor(alpha * plan.Count + 1e-9), $"{design}, measure {measure}, alpha {alpha}");
     }
 
@@ -54,7 +56,7 @@ public class RefeedingTests
     };
 
     private static RunResult Run(double[][] rows, Model model, Mask mask) =>
-        Made.Run(rows, model, mask, int.MaxValue, [1.1], mass: true, threads: 1);
+        Made.Run(rows, model, mask, int.MaxValue, [1.1], mass: true, threads: 1, tfce: (0.5, 2));
 
     private static double[][] Relabel(double[][] rows, RelabelingPlan plan, int k)
     {
@@ -67,8 +69,8 @@ public class RefeedingTests
 
     private static double P(double[] maxima) => maxima.Count(m => Ties.Reaches(m, maxima[0])) / (double)maxima.Length;
 
-    private static void Same(double[] a, double[] b)
+    private static void Same(double[] a, double[] b, double relative = 1e-9)
     {
-        foreach (var (x, y) in a.Order().Zip(b.Order())) Assert.Equal(x, y, 1e-9 * Math.Max(1, Math.Abs(x)));
+        foreach (var (x, y) in a.Order().Zip(b.Order())) Assert.Equal(x, y, relative * Math.Max(1, Math.Abs(x)));
     }
 }
