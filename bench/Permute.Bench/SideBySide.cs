@@ -11,7 +11,7 @@ namespace Permute.Bench;
 /// <summary>The engine and the NumPy/SciPy baseline on the same work in one run, in turn, both on two threads: medians and the median of the pairs' ratios.</summary>
 internal static class SideBySide
 {
-    private const int Threads = 2, Relabelings = 10_000;
+    private const int Threads = 2, Relabelings = 10_000, Shares = 10;
 
     /// <summary>Runs everything <paramref name="repeats"/> times and writes the table to standard output and to <paramref name="report"/>.</summary>
     public static void Run(int repeats, int extentRelabelings, string baseline, string report)
@@ -29,11 +29,13 @@ internal static class SideBySide
                 Pairs("height", repeats, () => Engine(work, Relabelings, []), () => Baseline(baseline, input, "height", [], Relabelings)),
                 Pairs("extent at p 0.01, with height", repeats, () => Engine(work, Relabelings, one),
                     () => Baseline(baseline, input, "extent", one.Select(u => R(u, 19)), extentRelabelings)),
+                Pairs("TFCE, exact against steps of 0.1, with height", repeats, () => Shares * Engine(work, Relabelings / Shares, [], tfce: true),
+                    () => Baseline(baseline, input, "tfce", [], Math.Max(2, extentRelabelings / 25))),
                 Pairs("five forming p at once (0.05 to 0.001), against 0.01 alone", repeats, () => Engine(work, Relabelings, five), () => Engine(work, Relabelings, one)),
             };
             var text = new StringBuilder();
             text.AppendLine(CultureInfo.InvariantCulture, $"{Processor()}, {InstructionSets.Best}, {Threads} threads; 20 images × {work.Mask.Count:N0} voxels × {Relabelings:N0} sign flips; medians of {repeats} runs");
-            text.AppendLine(CultureInfo.InvariantCulture, $"Baseline: {described} (extents timed on {extentRelabelings:N0} relabelings and scaled)");
+            text.AppendLine(CultureInfo.InvariantCulture, $"Baseline: {described} (extents timed on {extentRelabelings:N0} relabelings and scaled, TFCE on {Math.Max(2, extentRelabelings / 25):N0}, ours on {Relabelings / Shares:N0})");
             text.AppendLine().AppendLine("| job | permute, s | compared with, s | ratio (median of pairs) |").AppendLine("|---|---|---|---|");
             foreach (var (what, ours, theirs) in rows)
             {
@@ -59,9 +61,9 @@ internal static class SideBySide
     }
 
     /// <summary>Seconds of the whole loop: packing, tables, maxima, clusters, decisions in double and step-down.</summary>
-    private static double Engine(Work work, int relabelings, double[] forming)
+    private static double Engine(Work work, int relabelings, double[] forming, bool tfce = false)
     {
-        var measures = new Measures { FormingStatistics = forming };
+        var measures = new Measures { FormingStatistics = forming, Tfce = tfce ? (0.5, 2) : null };
         long start = Stopwatch.GetTimestamp();
         using var loop = new RelabelingLoop(work.Data, work.Mask, work.Model, new RelabelingPlan(work.Model.Relabelings, relabelings, 1), measures, Threads);
         loop.Run();
