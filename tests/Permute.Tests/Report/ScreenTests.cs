@@ -56,6 +56,22 @@ public class ScreenTests
     }
 
     [Fact]
+    public void An_enhanced_value_has_a_row_and_its_lack_of_a_theory_is_said_of_it_alone()
+    {
+        HeightSummary enhanced = new()
+        {
+            ObservedMaximum = 1900.5,
+            Permutation = new() { Critical = 1234.6, AdjustedP = 0.004 },
+            FieldTheory = new() { Reason = "no field theory for TFCE" },
+        };
+        string text = Text(MadeUp.Survives().Summary with { Tfce = enhanced });
+        Assert.Contains("enhanced value, critical value above 1,235", text);
+        Assert.Contains("the largest enhanced value survives", text);
+        Assert.Contains("Field theory gives no threshold for enhanced value: no field theory for TFCE.", text);
+        Assert.DoesNotContain("Field theory gives no figure", text);
+    }
+
+    [Fact]
     public void A_table_of_variables_speaks_of_variables_and_keeps_control_characters_out()
     {
         string text = Text(MadeUp.Variables().Summary);
