@@ -88,6 +88,7 @@ internal sealed unsafe class TileWorker : IDisposable
     {
         sums.Dispose();
         stepDown.Dispose();
+        scan?.Dispose();
         NativeMemory.AlignedFree(floor);
         NativeMemory.AlignedFree(highest);
         NativeMemory.AlignedFree(places);
