@@ -27,7 +27,7 @@ public static class ParetoGoodness
             // The statistic does not depend on the scale.
             for (int i = 0; i < sample.Length; i++) sample[i] = Quantile(random.Uniform(), shape);
             Array.Sort(sample);
-            var (k, sigma) = ParetoTail.WeightedMoments(sample);
+            var (k, sigma) = ParetoTail.Moments(sample);
             if (!(AndersonDarling(sample, k, sigma) < seen)) further++;
         }
         return further / (Samples + 1.0);

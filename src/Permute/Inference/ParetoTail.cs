@@ -12,29 +12,25 @@ namespace Permute.Inference;
 /// <param name="Scale">σ, in the unit of the sample.</param>
 public sealed record ParetoTail(int Exceedances, int Draws, double Threshold, double Shape, double Scale)
 {
-    /// <summary>The fit to the <paramref name="exceedances"/> largest of a sample sorted from the largest down, by probability-weighted moments with the plotting positions (i − 0.35)/n
-    /// (Hosking &amp; Wallis 1987): unlike moments and maximum likelihood they serve for the heavier tails (k down to −0.5) that t of few degrees of freedom has.</summary>
+    /// <summary>The fit to the <paramref name="exceedances"/> largest of a sample sorted from the largest down, by moments (Hosking &amp; Wallis 1987). Against exact lists of sign flips
+    /// they gave p nearer the truth than probability-weighted moments, which were several times too small on lumpy maxima.</summary>
     public static ParetoTail Fit(ReadOnlySpan<double> descending, int exceedances)
     {
         double threshold = (descending[exceedances - 1] + descending[exceedances]) / 2;
         var above = new double[exceedances];
         for (int i = 0; i < exceedances; i++) above[i] = descending[exceedances - 1 - i] - threshold;
-        var (shape, scale) = WeightedMoments(above);
+        var (shape, scale) = Moments(above);
         return new ParetoTail(exceedances, descending.Length, threshold, shape, scale);
     }
 
-    /// <summary>k and σ of excesses over a threshold, ascending.</summary>
-    public static (double Shape, double Scale) WeightedMoments(ReadOnlySpan<double> ascending)
+    /// <summary>k and σ of excesses over a threshold: k = (m²/v − 1)/2 and σ = m(m²/v + 1)/2 of their mean and variance.</summary>
+    public static (double Shape, double Scale) Moments(ReadOnlySpan<double> excesses)
     {
-        int n = ascending.Length;
-        double mean = 0, weighted = 0;
-        for (int i = 0; i < n; i++)
-        {
-            mean += ascending[i] / n;
-            weighted += (1 - (i + 0.65) / n) * ascending[i] / n;
-        }
-        double rest = mean - 2 * weighted;
-        return (mean / rest - 2, 2 * mean * weighted / rest);
+        double mean = 0, squares = 0;
+        foreach (double y in excesses) mean += y / excesses.Length;
+        foreach (double y in excesses) squares += (y - mean) * (y - mean);
+        double ratio = mean * mean * (excesses.Length - 1) / squares;
+        return ((ratio - 1) / 2, mean * (ratio + 1) / 2);
     }
 
     /// <summary>P(X ≥ <paramref name="x"/>) for x above the threshold; null where the fitted tail has ended: an observed value beyond it does not have p = 0.</summary>

@@ -27,15 +27,18 @@ public static class TailExtrapolation
         if (Search(maxima) is not var (fit, fitP))
             return Without(maxima.Draws / 4 < Fewest ? $"it takes {4 * Fewest} random relabelings at least" : "no generalised Pareto distribution fits the largest maxima");
         double? p = fit.P(maxima.Observed);
+        double[] counted = MonteCarlo.ClopperPearson(hits, maxima.Draws);
+        bool contradicted = p < counted[0] || p > counted[1];
         return new TailFit
         {
-            P = p,
+            P = contradicted ? null : p,
             Exceedances = fit.Exceedances,
             Threshold = fit.Threshold,
             Shape = fit.Shape,
             Scale = fit.Scale,
             FitP = fitP,
-            Reason = p == null ? "the observed maximum lies beyond the end of the fitted tail" : null,
+            Reason = p == null ? "the observed maximum lies beyond the end of the fitted tail"
+                : contradicted ? "the fitted tail gives a p outside the 95 % interval of the counted one" : null,
         };
     }
 
@@ -47,8 +50,8 @@ public static class TailExtrapolation
         for (int n = Math.Min(Most, draws.Length / 4); n >= Fewest; n -= Step)
         {
             ParetoTail fit = ParetoTail.Fit(draws, n);
-            // Probability-weighted moments say nothing at k ≤ −0.5; maxima that are infinite or all the same end here too.
-            if (!(fit.Shape > -0.5 && fit.Scale > 0 && double.IsFinite(fit.Shape) && double.IsFinite(fit.Scale))) continue;
+            // The estimates by moments have no variance at k ≤ −1/4 (Hosking & Wallis 1987); maxima that are infinite or all the same end here too.
+            if (!(fit.Shape > -0.25 && fit.Scale > 0 && double.IsFinite(fit.Shape) && double.IsFinite(fit.Scale))) continue;
             double[] above = [.. draws.Take(n).Reverse().Select(x => x - fit.Threshold)];
             double p = ParetoGoodness.P(above, fit.Shape, fit.Scale);
             if (p > Level) return (fit, p);
