@@ -12,8 +12,9 @@ namespace Permute.Inference;
 /// <param name="Scale">σ, in the unit of the sample.</param>
 public sealed record ParetoTail(int Exceedances, int Draws, double Threshold, double Shape, double Scale)
 {
-    /// <summary>The fit to the <paramref name="exceedances"/> largest of a sample sorted from the largest down, by moments (Hosking &amp; Wallis 1987). Against exact lists of sign flips
-    /// they gave p nearer the truth than probability-weighted moments, which were several times too small on lumpy maxima.</summary>
+    /// <summary>The fit to the <paramref name="exceedances"/> largest of a sample sorted from the largest down, by moments (Hosking &amp; Wallis 1987). In a trial of
+    /// ours against exact lists of sign flips (one table of data, three of noise, 30 samples of 1,000 each) probability-weighted moments were several times too small on the lumpy maxima of the
+    /// data, moments were not.</summary>
     public static ParetoTail Fit(ReadOnlySpan<double> descending, int exceedances)
     {
         double threshold = (descending[exceedances - 1] + descending[exceedances]) / 2;

@@ -8,7 +8,7 @@ internal sealed partial class Answer
     private IEnumerable<string> Tails() => rules.Where(r => r.Tail is not null).Select(r => Capital(r.Tail! switch
     {
         { P: { } p } t => $"{Name(r)}: p about {P(p)}, an approximation by a generalised Pareto tail of the {Show.Count(t.Exceedances)} largest random maxima ({Fitted(t)}); " +
-            $"what survives is decided by the counted p, {P(r.AdjustedP)}.",
+            $"it is rough and tends to be too small; what survives is decided by the counted p, {P(r.AdjustedP)}.",
         { Shape: not null } t => $"{Name(r)}: no approximation by a generalised Pareto tail ({Fitted(t)}): {t.Reason}; the counted p, {P(r.AdjustedP)}, stays.",
         var t => $"{Name(r)}: no approximation by a generalised Pareto tail: {t.Reason}.",
     }));

@@ -85,12 +85,22 @@ public class TailTests
     [Fact]
     public void A_tail_that_the_counted_p_contradicts_is_not_taken()
     {
-        // Nine draws reach 5 but the fit to the bulk gives far less: the interval of 9 in 1,009 is 0.004 to 0.017.
+        // Exponential maxima, and seven at 9 that no tail of them explains: the interval of 7 in 3,007 begins at 0.0009, the fitted tail gives less.
         var random = new Philox(6, 0);
-        double[] uniform = [.. Enumerable.Range(0, 1000).Select(_ => Math.Sqrt(-Math.Log(random.Uniform())))];
-        TailFit tail = TailExtrapolation.Of(new NullDistribution([3.2, .. uniform.Select(x => Math.Min(x, 2.4)), .. Enumerable.Range(0, 9).Select(i => 3.2 + i * 1e-3)], false), 9);
+        double[] draws = [.. Enumerable.Range(0, 3000).Select(_ => Math.Min(8.9, -Math.Log(random.Uniform()))), .. Enumerable.Range(0, 7).Select(i => 9 + i * 1e-3)];
+        TailFit tail = TailExtrapolation.Of(new NullDistribution([9, .. draws], false), 7);
         Assert.Null(tail.P);
-        Assert.NotNull(tail.Reason);
+        Assert.NotNull(tail.Shape);
+        Assert.Contains("outside the 95 % interval", tail.Reason);
+    }
+
+    [Fact]
+    public void The_Anderson_Darling_statistic_is_that_of_the_formula_worked_by_hand()
+    {
+        // Exponential (k = 0, scale 1) at y = ln 2 and ln 4, so F = 1/2 and 3/4: A^2 = -2 - (1/2)[(ln 1/2 + ln 1/4) + 3(ln 3/4 + ln 1/2)].
+        double expected = -2 - 0.5 * (Math.Log(0.5) + Math.Log(0.25) + 3 * (Math.Log(0.75) + Math.Log(0.5)));
+        Assert.Equal(expected, ParetoGoodness.AndersonDarling([Math.Log(2), Math.Log(4)], 0, 1), 1e-12);
+        Assert.Equal(double.PositiveInfinity, ParetoGoodness.AndersonDarling([0.5, 3], 0.5, 1));
     }
 
     [Fact]
