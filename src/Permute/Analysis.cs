@@ -16,6 +16,7 @@ public static class Analysis
         RunFolder.Probe(request.Out);
         using PreparedRun run = PreparedRun.Load(request, progress, cancel);
         Create(run);
+        foreach (string caution in run.Cautions()) progress?.Report(new AnalysisProgress("", 0, 0) { Caution = caution });
         using RelabelingLoop loop = run.Loop(request.Threads);
         Fill(run, loop, 1, 1, progress, cancel);
         return Conclude(run, loop);
@@ -27,6 +28,7 @@ public static class Analysis
         RunFolder.Probe(request.Out);
         using PreparedRun run = PreparedRun.Load(request, progress, cancel);
         Create(run);
+        foreach (string caution in run.Cautions()) progress?.Report(new AnalysisProgress("", 0, 0) { Caution = caution });
         return request.Out;
     }
 
