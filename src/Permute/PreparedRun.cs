@@ -17,6 +17,9 @@ internal sealed record FormingThreshold(double? P, double? PPerTail, double Stat
 /// <summary>An analysis read, checked and ready to be worked on: what prepare, work and finish share.</summary>
 internal sealed class PreparedRun : IDisposable
 {
+    // What the program itself holds beside data and loop, seen in whole runs.
+    private const long Overhead = 90_000_000;
+
     private PreparedRun() { }
 
     public required AnalysisRequest Request { get; init; }
@@ -32,6 +35,9 @@ internal sealed class PreparedRun : IDisposable
     public required IReadOnlyList<FormingThreshold> Forming { get; init; }
 
     public required string Fingerprint { get; init; }
+
+    /// <summary>What the reading of the design left to say.</summary>
+    public required IReadOnlyList<string> DesignCautions { get; init; }
 
     /// <summary>Threads to use.</summary>
     public int Threads => Request.Threads > 0 ? Request.Threads : Environment.ProcessorCount;
@@ -64,11 +70,41 @@ internal sealed class PreparedRun : IDisposable
             Measures = measures,
             Forming = forming,
             Fingerprint = FingerprintOf(study, design, plan, measures),
+            DesignCautions = design.Cautions,
         };
     }
 
     /// <summary>The loop over this run's relabelings.</summary>
-    public RelabelingLoop Loop(int threads) => new(Study.Data, Study.Mask, Model, Plan, Measures, threads);
+    public RelabelingLoop Loop(int threads)
+    {
+        long budget = Request.MemoryGb is double gb ? (long)(gb * 1e9) - Overhead - Study.Data.Bytes : long.MaxValue;
+        var loop = new RelabelingLoop(Study.Data, Study.Mask, Model, Plan, Measures, threads, null, Math.Max(0, budget));
+        if (loop.Bytes <= budget) return loop;
+        loop.Dispose();
+        throw new InputException(
+            $"--memory {Request.MemoryGb} GB is not enough for {Study.Data.Images} images of {Study.Data.Voxels} voxels: at least {(Overhead + Study.Data.Bytes + loop.Bytes) / 1e9:F2} GB are needed with {(threads > 0 ? threads : Environment.ProcessorCount)} threads; allow more, or use fewer threads or a smaller mask.");
+    }
+
+    /// <summary>What the user should know before the long work: results that cannot be reached, blocks without an exchange, oddities of the data.</summary>
+    public IEnumerable<string> Cautions()
+    {
+        double smallest = Plan.SmallestP(Model.Direction, Plan.Count);
+        if (smallest > Request.Alpha)
+            yield return $"the smallest p that {Plan.Count} relabelings of this design can reach is {smallest:0.####}, so no result can reach α {Request.Alpha}; "
+                + (Plan.Exhaustive || (double)Plan.Family.Ties(Model.Direction) / (double)Plan.Family.Possible > Request.Alpha
+                    ? $"{Reachability.ImagesNeeded(Model, Request.Alpha)} images would be needed."
+                    : $"at least {Math.Ceiling(1 / Request.Alpha)} relabelings are needed.");
+        foreach (string caution in DesignCautions) yield return caution;
+        const string Mark = "Caution: ";
+        foreach (string note in Study.Notes.Where(n => n.StartsWith(Mark, StringComparison.Ordinal))) yield return note[Mark.Length..];
+    }
+
+    /// <summary>Peak memory foreseen with <paramref name="loop"/>, bytes; reading a derived mask holds every voxel of the grid for a while.</summary>
+    public long MemoryBytes(RelabelingLoop loop)
+    {
+        long whole = Study.MaskOrigin == "derived" ? Study.Data.Bytes / Study.Data.Voxels * Study.Mask!.Grid.Count : 0;
+        return Overhead + Study.Data.Bytes + Math.Max(loop.Bytes, whole);
+    }
 
     public void Dispose() => Study.Dispose();
 
