@@ -72,7 +72,7 @@ public static partial class HtmlReport
         if (Rule.All(s).Any(r => r.Tail is not null))
             notes.Add("Tail approximation: generalised Pareto distribution (Knijnenburg et al. 2009; Winkler et al. 2016) by moments (Hosking & Wallis 1987), for maxima that fewer than 10 random " +
                 "ones reach, not for extents (whole numbers); exceedances lowered from 250 or a quarter until the Anderson–Darling test (p by parametric bootstrap) passes at 0.05. It decides nothing. " +
-                "Read it as an order of magnitude: against exact lists of sign flips it tended to be too small, in single cases up to 100 times.");
+                "Read it as an order of magnitude: it tends to be too small. The counted p beside it is the one to report.");
         if (s.Relabelings.Stop is { } stop) notes.Add($"Early stop: {stop.Rule} Risk at most {Show.Given(stop.Risk)} over all of them.");
         return notes;
     }
