@@ -24,6 +24,7 @@ public static partial class FindingsBuilder
             Relabelings = s.Relabelings with { Stop = new StopSummary(run.Settled && input.Maxima.Count < input.Plan.Count, RunSettling.Risk, of, settled, StopRule) },
             Height = s.Height with { Permutation = With(s.Height.Permutation, 0) },
             Extent = [.. s.Extent.Select((e, j) => e with { Permutation = With(e.Permutation, 1 + j) })],
+            Tfce = s.Tfce is { } tfce ? tfce with { Permutation = With(tfce.Permutation, 1 + s.Extent.Count + s.Mass.Count) } : null,
             Mass = [.. s.Mass.Select((m, j) => m with { Permutation = With(m.Permutation, 1 + s.Extent.Count + j) })],
         };
     }

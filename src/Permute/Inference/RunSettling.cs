@@ -25,7 +25,8 @@ internal sealed class RunSettling(RelabelingPlan plan, double alpha)
     /// <summary>Looks at the chunk that follows those seen; the first holds the observed relabeling.</summary>
     public void Add(Chunk chunk)
     {
-        List<(double[] Values, bool Whole)> series = [(chunk.Height, false), .. chunk.Extent.Select(e => (Array.ConvertAll(e, v => (double)v), true)), .. (chunk.Mass ?? []).Select(m => (m, false))];
+        List<(double[] Values, bool Whole)> series = [(chunk.Height, false), .. chunk.Extent.Select(e => (Array.ConvertAll(e, v => (double)v), true)), .. (chunk.Mass ?? []).Select(m => (m, false)),
+            .. (chunk.Tfce is { } tfce ? new[] { tfce } : []).Select(t => (t, false))];
         if (chunk.First != draws + 1) throw new ArgumentException($"Chunk {chunk.First} does not follow {draws + 1} relabelings.");
         if (watched.Count == 0) watched.AddRange(series.Select(s => new Watched(s.Whole ? s.Values[0] : Ties.Bound(s.Values[0]))));
         draws += chunk.Count;
@@ -39,7 +40,7 @@ internal sealed class RunSettling(RelabelingPlan plan, double alpha)
         }
     }
 
-    /// <summary>What became of p number <paramref name="index"/>, in the order height, extents, masses.</summary>
+    /// <summary>What became of p number <paramref name="index"/>, in the order height, extents, masses, enhanced value.</summary>
     public SettledSummary Of(int index) => watched[index] switch
     {
         { AtMostAlpha: null } => new SettledSummary("open", null),
