@@ -1,3 +1,4 @@
+using System.Numerics;
 using System.Runtime.InteropServices;
 using Permute.Data;
 using Permute.Statistics;
@@ -12,23 +13,23 @@ namespace Permute.Engine;
 internal sealed unsafe class StepDown : IDisposable
 {
     private readonly LoopData loop;
-    private readonly ISubsetSums sums;
-    private readonly ExactStatistic exact;
+    private readonly IBlockKernel kernel;
+    private readonly IExactStatistic exact;
     private readonly int padded, ranks;
     private readonly float* top;
     private readonly float[] observedSum;
     private readonly int[] reached;
     private readonly double[] observed;
 
-    public StepDown(LoopData loop, ISubsetSums sums, ExactStatistic exact, int capacity)
+    public StepDown(LoopData loop, IBlockKernel kernel, IExactStatistic exact, int capacity)
     {
-        (this.loop, this.sums, this.exact) = (loop, sums, exact);
+        (this.loop, this.kernel, this.exact) = (loop, kernel, exact);
         ranks = loop.Ranked.Length;
         reached = new int[ranks];
         padded = loop.Top.Blocks * SubjectMatrix.Lanes;
         top = (float*)NativeMemory.AlignedAlloc((nuint)((long)capacity * padded * sizeof(float)), 64);
-        observed = [.. loop.Ranked.Select(v => ExactStatistic.Orient(loop.Observed[v], loop.Model.Direction))];
-        observedSum = [.. observed.Select(t => (float)loop.Packed.SumAt(t))];
+        observed = [.. loop.Ranked.Select(v => Oriented.Of(loop.Observed[v], loop.Model.Direction))];
+        observedSum = [.. observed.Select(t => (float)loop.Scoring.ValueAt(t))];
     }
 
     /// <summary>Adds the tile's successive maxima to the counts of <paramref name="chunk"/>. <paramref name="highest"/> and <paramref name="best"/> hold, per place, the largest
@@ -36,10 +37,14 @@ internal sealed unsafe class StepDown : IDisposable
     public void Run(Tile tile, Chunk chunk, float* highest, double[] best)
     {
         for (int block = 0; block < loop.Top.Blocks; block++)
-            for (int c = 0; c < SubjectMatrix.Lanes; c += sums.Width)
+            for (int c = 0; c < SubjectMatrix.Lanes; c += kernel.Width)
             {
-                sums.Tabulate(loop.Top.Block(block) + c);
-                for (int p = 0; p < tile.Count; p++) sums.Sums(p, top + (long)p * padded + block * SubjectMatrix.Lanes + c);
+                kernel.Open(loop.Top.Block(block) + c);
+                for (int p = 0; p < tile.Count; p++)
+                {
+                    float* to = top + (long)p * padded + block * SubjectMatrix.Lanes + c;
+                    for (ulong unsure = kernel.Values(p, to); unsure != 0; unsure &= unsure - 1) to[BitOperations.TrailingZeroCount(unsure)] = float.NaN;
+                }
             }
         var counts = new int[ranks];
         for (int p = 0; p < tile.Count; p++) Place(tile, p, highest[p], ref best[p], counts);
@@ -54,15 +59,16 @@ internal sealed unsafe class StepDown : IDisposable
     {
         float* v = top + (long)p * padded;
         float highest = outside, nearest = float.PositiveInfinity;
+        exact.Arrange(tile.RowsAt(p), tile.SignsAt(p));
         for (int r = ranks - 1; r >= 0; r--)
         {
-            if (loop.Both) v[r] = MathF.Abs(v[r]);
+            if (float.IsNaN(v[r])) v[r] = (float)loop.Scoring.ValueAt(exact.Evidence(loop.Ranked[r]));
+            else if (loop.Both) v[r] = MathF.Abs(v[r]);
             if (v[r] > highest) highest = v[r];
             float apart = highest - observedSum[r];
             reached[r] = apart > 0 ? 1 : 0;
             nearest = MathF.Min(nearest, MathF.Abs(apart));
         }
-        exact.Arrange(tile.SignsAt(p));
         if (nearest <= loop.Margin)
         {
             Exactly(ref best, counts);

@@ -31,7 +31,7 @@ public static class Diagnosis
         {
             if (voxelsExpected is not { } ev || clustersExpected is not { } ec || !(ec > 0)) return null;
             if (Apart(voxels.Mean, ev, voxels.Error))
-                return $"The relabelings put {Percent(voxels.Mean, ev)} voxels above {clusters.FormingStatistic:0.###} than the t distribution expects: its assumption on the "
+                return $"The relabelings put {Percent(voxels.Mean, ev)} voxels above {clusters.FormingStatistic:0.###} than the theory expects: its assumption on the "
                     + "marginal distribution (normal errors) does not hold here.";
             if (Apart(number.Mean, ec, number.Error))
                 return $"The voxels above {clusters.FormingStatistic:0.###} are as many as expected, but they form {Percent(number.Mean, ec)} clusters than the theory expects: its "
