@@ -1,1 +1,4 @@
-return 0;
+using Permute.Cli;
+
+using var stop = new StopSignals();
+return await CommandLine.RunAsync(args, Console.Out, Console.Error, stop.Token);

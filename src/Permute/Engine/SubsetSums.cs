@@ -140,8 +140,6 @@ internal sealed unsafe class SubsetSums<TLanes, TVector> : IBlockKernel
         int groups = plan.Bits.Length, outer = plan.Outer, inner = groups - outer, count = tile.Count, planes = limits.Length;
         var table = (byte*)tables;
         int* next = places;
-        // The first pass over a word writes it, the others add to it: one code for both, without a branch.
-        ulong keep = shift == 0 ? 0 : ulong.MaxValue;
         fixed (float* limit = limits)
         fixed (uint* offset = offsets)
         {
@@ -153,8 +151,7 @@ internal sealed unsafe class SubsetSums<TLanes, TVector> : IBlockKernel
                 ulong* word = words + p;
                 if (TWays.Both)
                 {
-                    ulong* sign = word + (long)planes * stride;
-                    *sign = (*sign & keep) | (Join(TLanes.Negative(v0), TLanes.Negative(v1), TLanes.Negative(v2), TLanes.Negative(v3)) << shift);
+                    PutBits(word + (long)planes * stride, shift, Join(TLanes.Negative(v0), TLanes.Negative(v1), TLanes.Negative(v2), TLanes.Negative(v3)));
                     (v0, v1, v2, v3) = (TLanes.Abs(v0), TLanes.Abs(v1), TLanes.Abs(v2), TLanes.Abs(v3));
                 }
                 TVector best = TLanes.Max(TLanes.Max(v0, v1), TLanes.Max(v2, v3));
@@ -162,8 +159,7 @@ internal sealed unsafe class SubsetSums<TLanes, TVector> : IBlockKernel
                 for (int j = 0; j < planes; j++, word += stride)
                 {
                     TVector u = TLanes.All(limit[j]);
-                    ulong above = Join(TLanes.Above(v0, u), TLanes.Above(v1, u), TLanes.Above(v2, u), TLanes.Above(v3, u));
-                    *word = (*word & keep) | (above << shift);
+                    PutBits(word, shift, Join(TLanes.Above(v0, u), TLanes.Above(v1, u), TLanes.Above(v2, u), TLanes.Above(v3, u)));
                 }
             }
         }
@@ -209,6 +205,16 @@ internal sealed unsafe class SubsetSums<TLanes, TVector> : IBlockKernel
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
     private static ulong Join(ulong a, ulong b, ulong c, ulong d) =>
         a | (b << TLanes.Count) | (c << (2 * TLanes.Count)) | (d << (3 * TLanes.Count));
+
+    // One pass's share of a word: written on its own where it is a whole number of bytes.
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static void PutBits(ulong* word, int shift, ulong bits)
+    {
+        if (TLanes.Count == 16) *word = bits;
+        else if (TLanes.Count == 8) *((uint*)word + (shift >> 5)) = (uint)bits;
+        else if (TLanes.Count == 4) *((ushort*)word + (shift >> 4)) = (ushort)bits;
+        else *word = shift == 0 ? bits : *word | (bits << shift);
+    }
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
     private static void Outer(byte* table, uint* at, int groups, out TVector a0, out TVector a1, out TVector a2, out TVector a3)

@@ -89,6 +89,7 @@ internal sealed unsafe class TileWorker : IDisposable
     {
         kernel.Dispose();
         stepDown.Dispose();
+        scan?.Dispose();
         NativeMemory.AlignedFree(floor);
         NativeMemory.AlignedFree(highest);
         NativeMemory.AlignedFree(places);

@@ -20,8 +20,8 @@ public static class SummaryJson
         Converters = { new NumberPairOrText() },
     };
 
-    /// <summary>The text of summary.json.</summary>
-    public static string Text(Summary summary) => JsonSerializer.Serialize(summary, Options) + "\n";
+    /// <summary>The text of summary.json; a preview or thresholds by theory alone are written by the same rules.</summary>
+    public static string Text<T>(T summary) => JsonSerializer.Serialize(summary, Options) + "\n";
 
     /// <summary>Writes it to <paramref name="path"/>, aside and then renamed.</summary>
     public static void Write(string path, Summary summary) => AtomicFile.Write(path, to => Write(to, summary));
