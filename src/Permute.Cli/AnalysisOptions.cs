@@ -26,6 +26,10 @@ internal sealed class AnalysisOptions
     private readonly Option<string[]> adjust = Opt.Texts("--adjust", "COLUMN", "Nuisance covariates: columns of numbers or of levels.");
     private readonly Option<string?> exchangeInside = Opt.Text(
         "--exchange-inside", "COLUMN", "Rows change places only inside each level of this column (pairs, sessions, sites).");
+    private readonly Option<string?> design = Opt.Text(
+        "--design", "FILE", "A design matrix of your own (TSV, columns by name, a row per image), instead of --effect and --adjust.");
+    private readonly Option<string?> contrast = Opt.Text(
+        "--contrast", "FILE", "With --design: a weight per column (TSV, the same names); one row: t, several: F.");
     private readonly Option<string> direction = Opt.Direction();
     private readonly Option<string?> statistic = Opt.Text("--statistic", "t or f", "The statistic; default t, or f for more than two levels.");
     private readonly Option<string[]> record = Opt.Texts(
@@ -51,7 +55,7 @@ internal sealed class AnalysisOptions
     {
         Option[] shared =
         [
-            images, study, variables, mask, effect, levels, asLevels, dropMissing, adjust, exchangeInside, direction, statistic, record, formingP,
+            images, study, variables, mask, effect, levels, asLevels, dropMissing, adjust, exchangeInside, design, contrast, direction, statistic, record, formingP,
             formingValue, neighbours, relabelings, seed, threads, memory, alpha, assumeFwhm,
         ];
         foreach (Option option in writes ? [.. shared, folder, replace] : shared) verb.Options.Add(option);
@@ -79,6 +83,8 @@ internal sealed class AnalysisOptions
         DropMissing = parse.GetValue(dropMissing),
         Adjust = parse.GetValue(adjust) ?? [],
         ExchangeInside = parse.GetValue(exchangeInside),
+        Design = parse.GetValue(design),
+        Contrast = parse.GetValue(contrast),
         Direction = Enum.Parse<Direction>(parse.GetValue(direction)!, ignoreCase: true),
         Statistic = parse.GetValue(statistic),
         Record = parse.GetValue(record) ?? [],

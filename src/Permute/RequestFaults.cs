@@ -33,6 +33,9 @@ public static class RequestFaults
             Unless(Offered.Contains(measure), $"--record {measure} is not offered; the measures are {string.Join(", ", Offered)}.");
         if (request.AssumeFwhmMm is { } fwhm)
             Unless(fwhm.Count == 3 && fwhm.All(f => f > 0 && double.IsFinite(f)), "--assume-fwhm takes three positive numbers in mm, separated by commas.");
+        Unless((request.Design == null) == (request.Contrast == null), "--design and --contrast go together: the matrix, and the weights of its columns; give both or neither.");
+        Unless(request.Design == null || (request.Effect == DesignReader.Mean && request.Adjust.Count == 0 && request.Levels.Count == 0),
+            "--design holds all columns of the model, so --effect, --levels and --adjust have no place beside it; leave them out.");
         Unless(request.ExchangeIntact == null, "--exchange-intact is not offered yet; leave it out.");
         return faults;
     }

@@ -18,6 +18,7 @@ public static class DesignReader
     /// images). Throws <see cref="InputException"/> naming columns, levels and rows.</summary>
     public static DesignChoice Read(AnalysisRequest request, StudyTable? table, IReadOnlyList<int> readable)
     {
+        if (request.Design != null) return MatrixReader.Read(request, table, readable);
         if (request.Effect == Mean) return MeanReader.Read(request, table, readable);
         if (table == null)
             throw new InputException($"--effect {request.Effect} names a column, but there is no table; give one with --study.");

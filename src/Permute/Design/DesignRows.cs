@@ -46,6 +46,7 @@ internal static class DesignRows
     public static int[]? Blocks(AnalysisRequest request, StudyTable table, IReadOnlyList<int> rows, string[] effect, List<string> cautions)
     {
         if (request.ExchangeInside is not string column) return null;
+        string what = request.Design != null ? "what the contrast tests" : $"'{request.Effect}'";
         if (column == request.Effect || request.Adjust.Contains(column))
             throw new InputException($"--exchange-inside {column} is also {(column == request.Effect ? "the --effect" : "in --adjust")}; blocks are always adjusted for, so name the column once.");
         string[] cells = StudyColumns.Levels(table, column, request.DropMissing), blocks = [.. rows.Select(r => cells[r])], names = [.. blocks.Distinct()];
@@ -58,7 +59,7 @@ internal static class DesignRows
         if (idle.Count == names.Length)
             throw new InputException(effect.Distinct().Count() == 2
                 ? $"{table.Path}: no level of '{column}' holds images of both groups, so no labels can change places inside it and the effect is confounded with it; the levels are {string.Join(", ", idle)}."
-                : $"{table.Path}: '{request.Effect}' is the same inside every level of '{column}', so no rows can change places and the effect is confounded with it; the levels are {string.Join(", ", idle)}.");
+                : $"{table.Path}: {what} is the same inside every level of '{column}', so no rows can change places and the effect is confounded with it; the levels are {string.Join(", ", idle)}.");
         if (idle.Count > 0)
             cautions.Add($"Of column '{column}', {(idle.Count == 1 ? "this level allows" : "these levels allow")} no exchange and tell nothing about the effect: {string.Join(", ", idle)}.");
         return [.. blocks.Select(b => Array.IndexOf(names, b))];
