@@ -13,6 +13,7 @@ public static class Analysis
     /// files are not written here. Stopping through <paramref name="cancel"/> keeps the chunks done and throws <see cref="OperationCanceledException"/>.</summary>
     public static Findings Test(AnalysisRequest request, IProgress<AnalysisProgress>? progress = null, CancellationToken cancel = default)
     {
+        RunFolder.Probe(request.Out);
         using PreparedRun run = PreparedRun.Load(request, progress, cancel);
         Create(run);
         using RelabelingLoop loop = run.Loop(request.Threads);
@@ -23,6 +24,7 @@ public static class Analysis
     /// <summary>Checks everything and writes the run folder with request.json; returns its path.</summary>
     public static string Prepare(AnalysisRequest request, IProgress<AnalysisProgress>? progress = null, CancellationToken cancel = default)
     {
+        RunFolder.Probe(request.Out);
         using PreparedRun run = PreparedRun.Load(request, progress, cancel);
         Create(run);
         return request.Out;
@@ -59,7 +61,7 @@ public static class Analysis
             Alpha = request.Alpha,
             CanReachAlpha = smallest <= request.Alpha,
             ImagesNeeded = smallest <= request.Alpha ? null : Reachability.ImagesNeeded(run.Model, request.Alpha),
-            MemoryBytes = run.Study.Data.Bytes + loop.Bytes,
+            MemoryBytes = run.MemoryBytes(loop),
             Seconds = loop.Foresee(cancel).TotalSeconds,
             Notes = [.. run.Study.Notes, .. run.Model.Notes],
         };

@@ -17,6 +17,9 @@ internal sealed record FormingThreshold(double? P, double? PPerTail, double Stat
 /// <summary>An analysis read, checked and ready to be worked on: what prepare, work and finish share.</summary>
 internal sealed class PreparedRun : IDisposable
 {
+    // What the program itself holds beside data and loop, seen in whole runs.
+    private const long Overhead = 90_000_000;
+
     private PreparedRun() { }
 
     public required AnalysisRequest Request { get; init; }
@@ -68,7 +71,22 @@ internal sealed class PreparedRun : IDisposable
     }
 
     /// <summary>The loop over this run's relabelings.</summary>
-    public RelabelingLoop Loop(int threads) => new(Study.Data, Study.Mask, Model, Plan, Measures, threads);
+    public RelabelingLoop Loop(int threads)
+    {
+        long budget = Request.MemoryGb is double gb ? (long)(gb * 1e9) - Overhead - Study.Data.Bytes : long.MaxValue;
+        var loop = new RelabelingLoop(Study.Data, Study.Mask, Model, Plan, Measures, threads, null, Math.Max(0, budget));
+        if (loop.Bytes <= budget) return loop;
+        loop.Dispose();
+        throw new InputException(
+            $"--memory {Request.MemoryGb} GB is not enough for {Study.Data.Images} images of {Study.Data.Voxels} voxels: at least {(Overhead + Study.Data.Bytes + loop.Bytes) / 1e9:F2} GB are needed with {(threads > 0 ? threads : Environment.ProcessorCount)} threads; allow more, or use fewer threads or a smaller mask.");
+    }
+
+    /// <summary>Peak memory foreseen with <paramref name="loop"/>, bytes; reading a derived mask holds every voxel of the grid for a while.</summary>
+    public long MemoryBytes(RelabelingLoop loop)
+    {
+        long whole = Study.MaskOrigin == "derived" ? Study.Data.Bytes / Study.Data.Voxels * Study.Mask!.Grid.Count : 0;
+        return Overhead + Study.Data.Bytes + Math.Max(loop.Bytes, whole);
+    }
 
     public void Dispose() => Study.Dispose();
 

@@ -40,6 +40,16 @@ internal static class RunFolder
 
     public static bool Exists(string run) => File.Exists(RequestPath(run));
 
+    /// <summary>Throws <see cref="InputException"/> when nothing can be written to the folder, before any long work; leaves nothing behind.</summary>
+    public static void Probe(string run)
+    {
+        bool made = !Directory.Exists(run);
+        string probe = Path.Combine(run, $".probe-{Guid.NewGuid():N}");
+        AtomicFile.Write(probe, _ => { });
+        File.Delete(probe);
+        if (made) Directory.Delete(run);
+    }
+
     /// <summary>Makes the folder and writes the request; whatever another analysis left there is removed only with --replace.</summary>
     public static void Create(string run, RunRecord record)
     {

@@ -42,6 +42,9 @@ internal sealed class CorrelationScoring : Scoring
     public override float Margin { get; }
 
     /// <inheritdoc/>
+    public override long BytesPerRelabeling => (long)Columns * Images * sizeof(float);
+
+    /// <inheritdoc/>
     public override double ValueAt(double evidence)
     {
         if (double.IsInfinity(evidence)) return Math.Sign(evidence);

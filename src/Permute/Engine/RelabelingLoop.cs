@@ -12,16 +12,20 @@ namespace Permute.Engine;
 public sealed class RelabelingLoop : IDisposable
 {
     private const long BitsPerThread = 40L << 20;
-    private const int LargestTile = 4096;
+    private const int SmallestTile = 16, LargestTile = 4096;
     private readonly LoopData loop;
     private readonly int threads;
+    private readonly long memory;
 
     /// <summary>A loop over <paramref name="study"/>; <paramref name="mask"/> may be null only without forming thresholds. <paramref name="threads"/> 0 means all
-    /// processors, <paramref name="set"/> null the widest instruction set.</summary>
+    /// processors, <paramref name="set"/> null the widest instruction set; <paramref name="memory"/> bounds <see cref="Bytes"/> as far as smaller tiles can, at the same
+    /// results.</summary>
     public RelabelingLoop(
-        SubjectMatrix study, Mask? mask, Model model, RelabelingPlan plan, Measures measures, int threads = 0, InstructionSet? set = null)
+        SubjectMatrix study, Mask? mask, Model model, RelabelingPlan plan, Measures measures, int threads = 0, InstructionSet? set = null,
+        long memory = long.MaxValue)
     {
         this.threads = threads > 0 ? threads : Environment.ProcessorCount;
+        this.memory = memory;
         loop = new LoopData(study, mask, model, plan, measures, set ?? InstructionSets.Best, this.threads);
     }
 
@@ -31,13 +35,16 @@ public sealed class RelabelingLoop : IDisposable
     /// <summary>The voxels ranked for step-down, highest evidence first.</summary>
     public int[] Ranked => loop.Ranked;
 
-    /// <summary>Relabelings a thread works on at once.</summary>
-    public int TileSize =>
-        (int)Math.Clamp(BitsPerThread / TileWorker.BytesPerRelabeling(loop.Planes, loop.Study.Voxels, loop.Ranked.Length), 16, LargestTile);
+    /// <summary>Relabelings a thread works on at once: as many as 40 MB of bits hold, or fewer where memory is short.</summary>
+    public int TileSize => (int)Math.Clamp(
+        Math.Min(BitsPerThread, (memory - Math.Min(memory, PackedBytes)) / threads) / BytesPerRelabeling, SmallestTile, LargestTile);
 
     /// <summary>Bytes the loop holds: packed data and one worker a thread.</summary>
-    public long Bytes => loop.Packed.Blocks * (long)loop.Packed.Images * SubjectMatrix.Lanes * sizeof(float)
-        + threads * TileSize * TileWorker.BytesPerRelabeling(loop.Planes, loop.Study.Voxels, loop.Ranked.Length);
+    public long Bytes => PackedBytes + threads * TileSize * BytesPerRelabeling;
+
+    private long PackedBytes => loop.Packed.Blocks * (long)loop.Packed.Images * SubjectMatrix.Lanes * sizeof(float);
+
+    private long BytesPerRelabeling => TileWorker.BytesPerRelabeling(loop.Planes, loop.Study.Voxels, loop.Ranked.Length) + loop.Scoring.BytesPerRelabeling;
 
     /// <summary>All planned relabelings at once, without a folder.</summary>
     public RunResult Run(CancellationToken cancel = default)

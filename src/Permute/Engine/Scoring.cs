@@ -18,6 +18,9 @@ internal abstract class Scoring
     /// <summary>Values further apart than this are in their true order.</summary>
     public abstract float Margin { get; }
 
+    /// <summary>Bytes a kernel holds per relabeling, where they count.</summary>
+    public virtual long BytesPerRelabeling => 0;
+
     /// <summary>A kernel for one thread.</summary>
     public abstract IBlockKernel Kernel(InstructionSet set);
 

@@ -30,12 +30,17 @@ public static class Diagnosis
         string? Reading()
         {
             if (voxelsExpected is not { } ev || clustersExpected is not { } ec || !(ec > 0)) return null;
-            if (Apart(voxels.Mean, ev, voxels.Error))
-                return $"The relabelings put {Percent(voxels.Mean, ev)} voxels above {clusters.FormingStatistic:0.###} than the theory expects: its assumption on the "
-                    + "marginal distribution (normal errors) does not hold here.";
-            if (Apart(number.Mean, ec, number.Error))
-                return $"The voxels above {clusters.FormingStatistic:0.###} are as many as expected, but they form {Percent(number.Mean, ec)} clusters than the theory expects: its "
-                    + "assumption of a smooth field on a region without holes does not hold here (coarse lattice, holes in the mask, or roughness).";
+            string above = $"{clusters.FormingStatistic:0.###}";
+            bool voxelsApart = Apart(voxels.Mean, ev, voxels.Error), clustersApart = Apart(number.Mean, ec, number.Error);
+            string marginal = $"The relabelings put {Percent(voxels.Mean, ev)} voxels above {above} than the theory expects: its assumption on the marginal "
+                + "distribution (normal errors) does not hold here.";
+            const string Lattice = "the assumption of a smooth field on a region without holes does not hold here (coarse lattice, holes in the mask, or a "
+                + "smoothness that reaches further than neighbouring voxels tell).";
+            if (voxelsApart && clustersApart && Apart(number.Mean / ec, voxels.Mean / ev, 0))
+                return $"{marginal} They form {Percent(number.Mean, ec)} clusters than the theory expects, which voxels alone do not explain: {Lattice}";
+            if (voxelsApart) return marginal;
+            if (clustersApart)
+                return $"The voxels above {above} are as many as expected, but they form {Percent(number.Mean, ec)} clusters than the theory expects: {Lattice}";
             if (Apart(perCluster, ev / ec, 0))
                 return $"Voxels and clusters are each about as many as expected, but a cluster holds {Percent(perCluster, ev / ec)} voxels than the theory expects.";
             return verdict is Verdict.Liberal or Verdict.Conservative

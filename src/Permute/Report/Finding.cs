@@ -15,6 +15,9 @@ internal sealed record Finding(string What, string Detail, IReadOnlyList<(string
     /// <summary>The same as text: "permutation, field theory", or "none".</summary>
     public string SurvivesBy => Survives.Count == 0 ? "none" : string.Join(", ", Survives);
 
+    /// <summary>The same for a narrow column: "every method" where all that have a p agree.</summary>
+    public string SurvivesShort => Survives.Count > 1 && Survives.Count == ByMethod.Count(m => m.P != null) ? "every method" : SurvivesBy;
+
     public static Finding Of(Summary s, ClusterSummary c) => new($"cluster {c.Id} ({(c.Sign < 0 ? "-" : "+")})",
         Show.Plural(c.Voxels, "voxel"),
         [(Words.Permutation, c.AdjustedP.Permutation), (Words.FieldTheory, c.AdjustedP.FieldTheory), (Words.Bonferroni, null), .. Mass(s, c.AdjustedP.Mass)], s.Alpha);

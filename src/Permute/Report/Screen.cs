@@ -45,7 +45,7 @@ public static partial class Screen
         {
             if (findings.Count == 0) return;
             if (group != "") rows.Add([group, "", "", "", ""]);
-            rows.AddRange(findings.Take(RowsOfFindings).Select(f => (string[])[$"  {f.What}, {f.Detail}", .. f.ByMethod.Take(3).Select(m => Show.P(m.P, s.Alpha)), f.SurvivesBy]));
+            rows.AddRange(findings.Take(RowsOfFindings).Select(f => (string[])[$"  {f.What}, {f.Detail}", .. f.ByMethod.Take(3).Select(m => Show.P(m.P, s.Alpha)), f.SurvivesShort]));
             left += Math.Max(0, findings.Count - RowsOfFindings);
         }
         Add(s.Variables.Count > 0 ? "" : "by height", Finding.ByHeight(s));

@@ -3,16 +3,27 @@ namespace Permute.Report;
 /// <summary>A table in plain text: the first column to the left, numbers to the right, the last to the left again where it holds words.</summary>
 internal static class TextTable
 {
-    /// <summary>Writes rows under a header; the first column gives way when the whole is wider than <paramref name="width"/>.</summary>
+    /// <summary>Writes rows under a header; where the whole is wider than <paramref name="width"/>, the first cell of a row takes a line of its own.</summary>
     public static void Write(TextWriter to, int width, string[] header, IEnumerable<string[]> rows, bool wordsLast = true)
     {
         string[][] all = [header, .. rows];
-        int[] widths = [.. header.Select((_, c) => all.Max(r => r[c].Length))];
-        widths[0] = Math.Max(12, Math.Min(widths[0], width - widths.Skip(1).Sum(w => w + 2)));
+        int[] widths = [.. header.Select((_, c) => all.Where(r => c > 0 || !IsHeading(r)).Max(r => r[c].Length))];
+        bool fits = widths.Sum(w => w + 2) - 2 <= width;
         foreach (string[] row in all)
-            to.WriteLine(string.Join("  ", row.Select((cell, c) => c == 0 ? Shorten(cell, widths[0]).PadRight(widths[0])
-                : wordsLast && c == row.Length - 1 ? cell : cell.PadLeft(widths[c]))).TrimEnd());
+        {
+            string first = Clean(row[0]);
+            if (!fits) to.WriteLine(Shorten(first, width));
+            if (IsHeading(row))
+            {
+                if (fits) to.WriteLine(Shorten(first, width));
+                continue;
+            }
+            string rest = string.Join("  ", row.Skip(1).Select((cell, c) => wordsLast && c == row.Length - 2 ? cell : cell.PadLeft(widths[c + 1])));
+            to.WriteLine((fits ? $"{first.PadRight(widths[0])}  {rest}" : $"    {rest}").TrimEnd());
+        }
     }
+
+    private static bool IsHeading(string[] row) => row.Skip(1).All(cell => cell.Length == 0);
 
     /// <summary>Writes text in lines of at most <paramref name="width"/>, the later ones indented.</summary>
     public static void Wrap(TextWriter to, int width, string text, string first = "", string later = "")

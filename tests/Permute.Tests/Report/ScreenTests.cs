@@ -60,7 +60,7 @@ public class ScreenTests
     {
         string text = Text(MadeUp.Variables().Summary);
         Assert.Contains("By permutation, 1 of 3 variables survives (2 with step-down) at α 0.05.", text);
-        Assert.Contains("aroma, +4.510 0.0031 0.0031 0.0033 permutation, step-down, Bonferroni", text);
+        Assert.Contains("aroma, +4.510 0.0031 0.0031 0.0033 every method", text);
         Assert.DoesNotContain("voxel", text);
         Assert.DoesNotContain('\t', text);
     }
