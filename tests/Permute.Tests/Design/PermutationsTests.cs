@@ -3,7 +3,7 @@ using Permute.Design;
 
 namespace Permute.Tests.Design;
 
-/// <summary>Permutations of rows against brute force over all n! orders, for all designs of up to five images and some of up to seven.</summary>
+/// <summary>Permutations of rows against brute force over all n! orders, for designs of up to seven images.</summary>
 public class PermutationsTests
 {
     public static TheoryData<string, string> Rows() => new()
