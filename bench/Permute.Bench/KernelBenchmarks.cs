@@ -15,8 +15,8 @@ public unsafe class KernelBenchmarks : IDisposable
     private readonly GroupPlan plan = new(Images);
     private Work? work;
     private PackedData? packed;
-    private Tile? tile;
-    private ISubsetSums? sums;
+    private SignTile? tile;
+    private IBlockKernel? sums;
     private float* floor;
     private int* places;
     private ulong* words;
@@ -35,9 +35,9 @@ public unsafe class KernelBenchmarks : IDisposable
         work = new Work(Images, 2000);
         packed = new PackedData(work.Data, work.Model);
         var order = new RelabelingPlan(work.Model.Relabelings, Count, 1);
-        var (rows, signs) = (new int[Images], new sbyte[Count * Images]);
-        for (int k = 0; k < Count; k++) order.Arrange(k, rows, signs.AsSpan(k * Images, Images));
-        tile = new Tile(plan, 0, Count, signs);
+        var (rows, signs) = (new int[Count * Images], new sbyte[Count * Images]);
+        for (int k = 0; k < Count; k++) order.Arrange(k, rows.AsSpan(k * Images, Images), signs.AsSpan(k * Images, Images));
+        tile = new SignTile(plan, work.Model.Codes!, 0, Count, rows, signs);
         sums = SubsetSums.Create(plan, Set);
         sums.Take(tile);
         floor = (float*)NativeMemory.AlignedAlloc(Count * sizeof(float), 64);
@@ -67,7 +67,7 @@ public unsafe class KernelBenchmarks : IDisposable
         float* u = packed!.Block(3);
         for (int k = 0; k < Count; k++)
         {
-            ReadOnlySpan<sbyte> s = tile!.Signs.AsSpan(k * Images, Images);
+            ReadOnlySpan<sbyte> s = tile!.SignsAt(k);
             for (int lane = 0; lane < SubjectMatrix.Lanes; lane += System.Numerics.Vector<float>.Count)
             {
                 var sum = System.Numerics.Vector<float>.Zero;
@@ -97,10 +97,10 @@ public unsafe class KernelBenchmarks : IDisposable
     private int Each(bool both, ReadOnlySpan<float> limits)
     {
         int found = 0;
-        ISubsetSums sums = this.sums!;
+        IBlockKernel sums = this.sums!;
         for (int c = 0; c < SubjectMatrix.Lanes; c += sums.Width)
         {
-            sums.Tabulate(packed!.Block(3) + c);
+            sums.Open(packed!.Block(3) + c);
             found += limits.Length == 0
                 ? sums.AboveFloor(both, floor, places)
                 : sums.AboveFloorAndLimits(both, floor, places, limits, words, Count, c);

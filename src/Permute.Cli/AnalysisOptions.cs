@@ -17,16 +17,21 @@ internal sealed class AnalysisOptions
     private readonly Option<string?> mask = Opt.Text(
         "--mask", "FILE", "Search region: every voxel that is not 0; default: derived from the images.");
     private readonly Option<string?> effect = Opt.Text(
-        "--effect", "mean or COLUMN", "What is tested: the mean, or the difference between the two levels of a column; default mean.");
+        "--effect", "mean or COLUMN", "What is tested: the mean, the difference between two levels of a column (an F for more), or the slope of a column of numbers; default mean.");
     private readonly Option<string[]> levels = Opt.One(
         "--levels", "A,B", "The levels compared, A minus B; rows of other levels are left out, and named.", Values.Pair);
     private readonly Option<string[]> asLevels = Opt.Texts("--as-levels", "COLUMN", "Take the numbers of these columns as levels.");
     private readonly Option<bool> dropMissing = Opt.Flag(
         "--drop-missing", "Leave rows with missing cells out, naming them, instead of refusing them.");
+    private readonly Option<string[]> adjust = Opt.Texts("--adjust", "COLUMN", "Nuisance covariates: columns of numbers or of levels.");
     private readonly Option<string?> exchangeInside = Opt.Text(
         "--exchange-inside", "COLUMN", "Rows change places only inside each level of this column (pairs, sessions, sites).");
+    private readonly Option<string?> design = Opt.Text(
+        "--design", "FILE", "A design matrix of your own (TSV, columns by name, a row per image), instead of --effect and --adjust.");
+    private readonly Option<string?> contrast = Opt.Text(
+        "--contrast", "FILE", "With --design: a weight per column (TSV, the same names); one row: t, several: F.");
     private readonly Option<string> direction = Opt.Direction();
-    private readonly Option<string?> statistic = Opt.Text("--statistic", "t", "The statistic; t is the only one so far.");
+    private readonly Option<string?> statistic = Opt.Text("--statistic", "t or f", "The statistic; default t, or f for more than two levels.");
     private readonly Option<string[]> record = Opt.Texts(
         "--record", "MEASURE", "Measures: height, extent, mass, tfce, uncorrected; default height extent (tables: height uncorrected).");
     private readonly Option<double[]?> tfceExponents = Opt.List(
@@ -56,13 +61,13 @@ internal sealed class AnalysisOptions
     {
         Option[] shared =
         [
-            images, study, variables, mask, effect, levels, asLevels, dropMissing, exchangeInside, direction, statistic, record, tfceExponents,
-            formingP, formingValue, neighbours, relabelings, seed, threads, memory, alpha, assumeFwhm, stopWhenSettled, extrapolateTail,
+            images, study, variables, mask, effect, levels, asLevels, dropMissing, adjust, exchangeInside, design, contrast, direction, statistic, record,
+            tfceExponents, formingP, formingValue, neighbours, relabelings, seed, threads, memory, alpha, assumeFwhm, stopWhenSettled, extrapolateTail,
         ];
         foreach (Option option in writes ? [.. shared, folder, replace] : shared) verb.Options.Add(option);
         statistic.Validators.Add(r =>
         {
-            if (r.Tokens is [var word] && word.Value != "t") r.AddError($"--statistic t is the only one so far, but '{word.Value}' was asked for");
+            if (r.Tokens is [var word] && word.Value is not ("t" or "f")) r.AddError($"--statistic takes t or f, but '{word.Value}' was asked for");
         });
         verb.Validators.Add(r =>
         {
@@ -82,7 +87,10 @@ internal sealed class AnalysisOptions
         Levels = parse.GetValue(levels) ?? [],
         AsLevels = parse.GetValue(asLevels) ?? [],
         DropMissing = parse.GetValue(dropMissing),
+        Adjust = parse.GetValue(adjust) ?? [],
         ExchangeInside = parse.GetValue(exchangeInside),
+        Design = parse.GetValue(design),
+        Contrast = parse.GetValue(contrast),
         Direction = Enum.Parse<Direction>(parse.GetValue(direction)!, ignoreCase: true),
         Statistic = parse.GetValue(statistic),
         Record = parse.GetValue(record) ?? [],

@@ -172,6 +172,8 @@ public static class Analysis
     {
         Images = [.. request.Images.Select(Path.GetFullPath)],
         Study = request.Study is string study ? Path.GetFullPath(study) : null,
+        Design = request.Design is string design ? Path.GetFullPath(design) : null,
+        Contrast = request.Contrast is string contrast ? Path.GetFullPath(contrast) : null,
         Mask = request.Mask is string mask ? Path.GetFullPath(mask) : null,
         Out = Path.GetFullPath(request.Out),
     };

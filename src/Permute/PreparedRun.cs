@@ -117,7 +117,7 @@ internal sealed class PreparedRun : IDisposable
 
     private static IReadOnlyList<FormingThreshold> Thresholds(AnalysisRequest request, Model model)
     {
-        var field = new TField(model.DegreesOfFreedom);
+        Field field = Marginal.Of(model);
         int tails = model.Direction == Direction.Both ? 2 : 1;
         IEnumerable<double> asked = request.FormingP.Count + request.FormingValue.Count > 0 ? request.FormingP : [0.01, 0.001];
         return
@@ -133,7 +133,7 @@ internal sealed class PreparedRun : IDisposable
         foreach (var (path, hash) in study.Sha256.OrderBy(p => p.Key, StringComparer.Ordinal)) text.Append(CultureInfo.InvariantCulture, $"file {hash} {Path.GetFileName(path)}\n");
         text.AppendJoin(' ', design.Rows).Append('\n').AppendJoin(' ', study.Variables).Append('\n');
         text.Append(CultureInfo.InvariantCulture, $"voxels {study.Data.Voxels} {design.Model.Statistic} {design.Model.Direction}\n");
-        foreach (double x in design.Model.Regressor) text.Append(CultureInfo.InvariantCulture, $"{x:R} ");
+        foreach (double x in design.Model.Regressors.SelectMany(r => r)) text.Append(CultureInfo.InvariantCulture, $"{x:R} ");
         foreach (double x in design.Model.Nuisance.Basis.SelectMany(b => b)) text.Append(CultureInfo.InvariantCulture, $"{x:R} ");
         text.Append(CultureInfo.InvariantCulture, $"\n{plan.Family.Kind} {plan.Count} {plan.Exhaustive} {plan.Seed}\n");
         foreach (double u in measures.FormingStatistics) text.Append(CultureInfo.InvariantCulture, $"{u:R} ");

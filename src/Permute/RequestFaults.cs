@@ -28,7 +28,7 @@ public static class RequestFaults
         Unless(request.Neighbours is 6 or 18 or 26, $"--neighbours takes 6, 18 or 26, but was {request.Neighbours}.");
         Unless(request.Threads >= 0, $"--threads must be at least 1, but was {request.Threads}.");
         Unless(request.MemoryGb is null or > 0, $"--memory must be positive, but was {request.MemoryGb}.");
-        Unless(request.Statistic is null or "t", $"--statistic {request.Statistic} is not offered yet; t is the only one so far.");
+        Unless(request.Statistic is null or "t" or "f", $"--statistic {request.Statistic} is not offered; the statistics are t and f.");
         foreach (string measure in request.Record)
             Unless(Offered.Contains(measure), $"--record {measure} is not offered; the measures are {string.Join(", ", Offered)}.");
         Unless(request.Variables.Count == 0 || !request.Record.Contains("tfce"),
@@ -37,7 +37,10 @@ public static class RequestFaults
             $"--tfce-exponents takes two positive numbers, E of the extent and H of the height, but was {request.TfceExponents.E},{request.TfceExponents.H}.");
         if (request.AssumeFwhmMm is { } fwhm)
             Unless(fwhm.Count == 3 && fwhm.All(f => f > 0 && double.IsFinite(f)), "--assume-fwhm takes three positive numbers in mm, separated by commas.");
-        Unless(request.Effect != DesignReader.Mean || request.Adjust.Count == 0, "--adjust is not offered yet; leave it out.");
+        Unless((request.Design == null) == (request.Contrast == null), "--design and --contrast go together: the matrix, and the weights of its columns; give both or neither.");
+        Unless(request.Design == null || (request.Effect == DesignReader.Mean && request.Adjust.Count == 0 && request.Levels.Count == 0),
+            "--design holds all columns of the model, so --effect, --levels and --adjust have no place beside it; leave them out.");
+        Unless(request.ExchangeIntact == null, "--exchange-intact is not offered yet; leave it out.");
         return faults;
     }
 }

@@ -43,8 +43,8 @@ public class HelpTests
     }
 
     [Theory]
-    [InlineData("test", "--images --study --variables --mask --effect --levels --as-levels --drop-missing --exchange-inside --direction --statistic --record --tfce-exponents "
-        + "--forming-p --forming-value --neighbours --relabelings --seed --threads --memory --alpha --assume-fwhm --stop-when-settled --extrapolate-tail --out --replace --json")]
+    [InlineData("test", "--images --study --variables --mask --effect --levels --as-levels --drop-missing --adjust --exchange-inside --design --contrast --direction --statistic --record "
+        + "--tfce-exponents --forming-p --forming-value --neighbours --relabelings --seed --threads --memory --alpha --assume-fwhm --stop-when-settled --extrapolate-tail --out --replace --json")]
     [InlineData("theory", "--mask --resels --voxels --assume-fwhm --assume-fwhm-voxels --df --alpha --direction --forming-p --forming-value --json")]
     [InlineData("work", "--part --of --threads")]
     [InlineData("finish", "--json")]

@@ -12,7 +12,7 @@ public class WrongCommandLineTests
     [InlineData("--mist is no option", "test", "--study", "--mist")]
     [InlineData("--bogus", "theory", "--df", "3", "--bogus")]
     [InlineData("--bogus", "test", "--images", "a.nii", "--alpha", "0.05", "--bogus")]
-    [InlineData("--statistic t is the only one so far", "test", "--images", "a.nii", "--statistic", "welch")]
+    [InlineData("--statistic takes t or f", "test", "--images", "a.nii", "--statistic", "welch")]
     [InlineData("'0,05' is no number", "test", "--images", "a.nii", "--alpha", "0,05")]
     [InlineData("'1e3'", "test", "--images", "a.nii", "--relabelings", "1e3")]
     [InlineData("'99999999999'", "test", "--images", "a.nii", "--relabelings", "99999999999")]
@@ -26,7 +26,7 @@ public class WrongCommandLineTests
     [InlineData("RUN", "work")]
     [InlineData("--alpha", "test", "--images", "a.nii", "--alpha", "0.05", "--alpha", "0.01")]
     [InlineData("0.01", "test", "--images", "a.nii", "--alpha", "0.05", "0.01")]
-    [InlineData("--adjust", "test", "--images", "a.nii", "--seed", "1", "--adjust", "age")]
+    [InlineData("--uneven-smoothness", "test", "--images", "a.nii", "--seed", "1", "--uneven-smoothness")]
     public async Task A_wrong_command_line_ends_with_2_and_one_line_of_why(string why, params string[] args)
     {
         Cli.Result result = await Cli.Run(args);

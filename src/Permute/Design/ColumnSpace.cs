@@ -52,6 +52,18 @@ public sealed class ColumnSpace
         }
     }
 
+    /// <summary>A copy of <paramref name="column"/> with the part that lies in the space taken out, to rounding.</summary>
+    public double[] Without(double[] column)
+    {
+        double[] rest = [.. column];
+        Remove(rest);
+        Remove(rest);
+        return rest;
+    }
+
+    /// <summary>Whether <paramref name="column"/> lies in the space.</summary>
+    public bool Holds(double[] column) => Norm(Without(column)) <= Tolerance * Norm(column);
+
     private static double Norm(ReadOnlySpan<double> v)
     {
         double sum = 0;

@@ -85,6 +85,16 @@ public sealed class GroupSwaps : IRelabelings
         }
     }
 
+    /// <inheritdoc/>
+    /// <remarks>Groups keep their shares; blocks that allow an exchange grow in number, as many pairs as fit.</remarks>
+    public IRelabelings Grown(int images)
+    {
+        int inFirst = (int)Math.Round((double)images * members.Sum() / Images);
+        return InBlocks
+            ? new GroupSwaps([.. Enumerable.Range(0, images).Select(i => i % 2 == 0)], [.. Enumerable.Range(0, images).Select(i => i / 2)])
+            : new GroupSwaps([.. Enumerable.Range(0, images).Select(i => i < inFirst)]);
+    }
+
     /// <summary>n over k, exactly.</summary>
     public static BigInteger Choose(int n, int k)
     {

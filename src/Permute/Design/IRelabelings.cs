@@ -27,6 +27,9 @@ public interface IRelabelings
     /// <summary>The arrangement of a rank below <see cref="Possible"/>; rank 0 is the observed one.</summary>
     void Unrank(long rank, Span<int> order, Span<sbyte> sign);
 
+    /// <summary>The same family for another number of images, as like this one as can be, to say how many images a question would need.</summary>
+    IRelabelings Grown(int images);
+
     /// <summary>A uniform random arrangement.</summary>
     void Draw(ref Philox random, Span<int> order, Span<sbyte> sign);
 }

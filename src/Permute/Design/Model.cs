@@ -1,11 +1,13 @@
 namespace Permute.Design;
 
 /// <summary>
-/// The question as numbers: the tested regressor, the nuisance space Z that stays in the model, and the family of relabelings. The regressor is kept
+/// The question as numbers: the tested regressors X1, the nuisance space Z that stays in the model, and the family of relabelings. The regressors are kept
 /// residualised on Z (x̃ = R_Z x), so the partial t of a relabeled data vector y* is x̃ᵀy* against what the full model leaves of it.
 /// </summary>
 public sealed record Model
 {
+    private readonly IReadOnlyList<double[]> regressors = [];
+
     /// <summary>"mean", or "group: patient minus control".</summary>
     public required string Effect { get; init; }
 
@@ -15,8 +17,25 @@ public sealed record Model
     /// <summary>n.</summary>
     public required int Images { get; init; }
 
-    /// <summary>x̃: the tested regressor with Z taken out; length n.</summary>
-    public required double[] Regressor { get; init; }
+    /// <summary>x̃: the tested regressor (of several, the first) with Z taken out; length n.</summary>
+    public double[] Regressor
+    {
+        get => Regressors[0];
+        init => Regressors = [value];
+    }
+
+    /// <summary>The tested regressors with Z taken out; one for a t, one or more for an F.</summary>
+    public IReadOnlyList<double[]> Regressors
+    {
+        get => regressors;
+        init => (regressors, TestedSpace) = (value, new ColumnSpace(value[0].Length, value));
+    }
+
+    /// <summary>X̂: the space of <see cref="Regressors"/>.</summary>
+    public ColumnSpace TestedSpace { get; private init; } = new(0, []);
+
+    /// <summary>Q: an orthonormal basis of the part of Z that relabelings move; empty where every relabeling leaves Z in place.</summary>
+    public IReadOnlyList<double[]> Moving { get; init; } = [];
 
     /// <summary>Z: what the reduced model holds (nothing, the grand mean, block means, covariates).</summary>
     public required ColumnSpace Nuisance { get; init; }
@@ -36,10 +55,10 @@ public sealed record Model
     /// <summary>Number of images in each group compared, by name; empty for the mean.</summary>
     public IReadOnlyList<(string Level, int Images)> Groups { get; init; } = [];
 
-    /// <summary>ν = n − rank [x Z].</summary>
-    public int DegreesOfFreedom => Images - Nuisance.Rank - 1;
+    /// <summary>ν = n − rank [X1 Z].</summary>
+    public int DegreesOfFreedom => Images - Nuisance.Rank - Regressors.Count;
 
-    /// <summary>"t" today.</summary>
+    /// <summary>"t", or "f" for several regressors.</summary>
     public string Statistic { get; init; } = "t";
 
     /// <summary>Whether the relabelings make the test exact (every one leaves Z in place).</summary>
@@ -55,6 +74,11 @@ public sealed record Model
     public void FullResiduals(Span<double> y)
     {
         Nuisance.Remove(y);
+        if (Regressors.Count > 1)
+        {
+            TestedSpace.Remove(y);
+            return;
+        }
         double slope = Estimate(y);
         for (int i = 0; i < y.Length; i++) y[i] -= slope * Regressor[i];
     }

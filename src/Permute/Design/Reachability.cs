@@ -8,18 +8,8 @@ public static class Reachability
     {
         for (int n = model.Images; ; n++)
         {
-            IRelabelings family = Grown(model, n);
+            IRelabelings family = n == model.Images ? model.Relabelings : model.Relabelings.Grown(n);
             if ((double)family.Ties(model.Direction) <= alpha * (double)family.Possible) return n;
         }
-    }
-
-    private static IRelabelings Grown(Model model, int images)
-    {
-        if (model.Groups.Count == 0) return new SignFlips(images);
-        int first = (int)Math.Round((double)images * model.Groups[0].Images / model.Images);
-        bool[] inFirst = [.. Enumerable.Range(0, images).Select(i => i < first)];
-        if (model.Relabelings is not GroupSwaps { InBlocks: true }) return new GroupSwaps(inFirst);
-        // Blocks that allow an exchange grow in number: as many pairs as fit.
-        return new GroupSwaps([.. Enumerable.Range(0, images).Select(i => i % 2 == 0)], [.. Enumerable.Range(0, images).Select(i => i / 2)]);
     }
 }

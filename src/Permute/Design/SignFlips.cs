@@ -37,4 +37,7 @@ public sealed class SignFlips(int images) : IRelabelings
             (order[i], sign[i]) = (i, (bits & 1) == 0 ? (sbyte)1 : (sbyte)-1);
         }
     }
+
+    /// <inheritdoc/>
+    public IRelabelings Grown(int images) => new SignFlips(images);
 }

@@ -6,7 +6,7 @@ using System.Runtime.Intrinsics.X86;
 namespace Permute.Engine;
 
 /// <summary>
-/// The largest enhanced value of an image of single-precision sums. Voxels join from the highest down; a cluster carries its size, the height it was last settled at and the largest
+/// The largest enhanced value of an image of single-precision values. Voxels join from the highest down; a cluster carries its size, the height it was last settled at and the largest
 /// value of its voxels, for from there on all of them gain alike. Clusters, not voxels, are united: there are as many as local maxima, so their union–find stays in the
 /// innermost cache. Nothing is allocated per call. One object serves one thread.
 /// </summary>
@@ -17,21 +17,18 @@ internal sealed unsafe class EnhancedMaximum : IDisposable
     /// <summary>Labels are fetched so many voxels before they are needed: they lie all over memory.</summary>
     private const int Ahead = 12, BeforeZ = 10, AfterZ = 13;
 
-    /// <summary>1 − r² counts as so much at least.</summary>
-    private const double Least = 1e-12;
     private readonly EnhancementPlan plan;
-    private readonly double scale;
-    private readonly int degreesOfFreedom;
+    private readonly ScoreShape shape;
     private readonly ulong* keys, spare;
     private readonly int* label;
     private readonly byte* joined;
     private readonly Cluster* clusters;
     private readonly int[] starts = new int[Digits << Digit];
 
-    /// <summary>For sums whose t is r √ν/√(1 − r²), r = <paramref name="scale"/> v.</summary>
-    public EnhancedMaximum(EnhancementPlan plan, double scale, int degreesOfFreedom)
+    /// <summary>For images of values that stand for the statistic as <paramref name="shape"/> says.</summary>
+    public EnhancedMaximum(EnhancementPlan plan, ScoreShape shape)
     {
-        (this.plan, this.scale, this.degreesOfFreedom) = (plan, scale, degreesOfFreedom);
+        (this.plan, this.shape) = (plan, shape);
         int voxels = plan.Cell.Length;
         keys = (ulong*)NativeMemory.Alloc((nuint)voxels, sizeof(ulong));
         spare = (ulong*)NativeMemory.Alloc((nuint)voxels, sizeof(ulong));
@@ -42,13 +39,6 @@ internal sealed unsafe class EnhancedMaximum : IDisposable
 
     /// <summary>Bytes one object holds.</summary>
     public static long Bytes(EnhancementPlan plan) => plan.Cell.Length * (2L * sizeof(ulong) + sizeof(Cluster)) + plan.Cells * 4L + plan.Cells / 8;
-
-    /// <summary>The t of a sum; finite, since 1 − r² counts as 1e-12 at least.</summary>
-    public double Height(double v)
-    {
-        double square = scale * scale * v * v;
-        return Math.Sqrt(degreesOfFreedom * square / Math.Max(1 - square, Least));
-    }
 
     /// <summary>The largest enhanced value of the positive sums of <paramref name="image"/> (V of them), or of its negated sums; 0 without one. <paramref name="top"/> becomes the
     /// largest of these sums.</summary>
@@ -121,7 +111,7 @@ internal sealed unsafe class EnhancedMaximum : IDisposable
     {
         // Locals, since a store through a pointer would make the compiler load fields again.
         (int begun, uint around, bool cubic) = (0, plan.Around, plan.IsCubic);
-        double square = scale * scale, nu = degreesOfFreedom;
+        ScoreShape shape = this.shape;
         ulong* keys = this.keys;
         int* label = this.label;
         byte* joined = this.joined;
@@ -139,8 +129,8 @@ internal sealed unsafe class EnhancedMaximum : IDisposable
                     Sse.Prefetch0(label + ahead + step[AfterZ]);
                 }
                 int cell = (int)(uint)keys[i];
-                double r = BitConverter.UInt32BitsToSingle((uint)(keys[i] >> 32)), rr = square * r * r, tt = nu * rr / Math.Max(1 - rr, Least);
-                double level = cubic ? tt * Math.Sqrt(tt) / 3 : plan.HeightPower(Math.Sqrt(tt));
+                double square = shape.Power(BitConverter.UInt32BitsToSingle((uint)(keys[i] >> 32)));
+                double level = cubic && shape.Root ? square * Math.Sqrt(square) / 3 : plan.HeightPower(shape.Root ? Math.Sqrt(square) : square);
                 uint near = (Row(joined, cell + row[0]) | Row(joined, cell + row[1]) << 3 | Row(joined, cell + row[2]) << 6 | Row(joined, cell + row[3]) << 9
                     | Row(joined, cell + row[4]) << 12 | Row(joined, cell + row[5]) << 15 | Row(joined, cell + row[6]) << 18 | Row(joined, cell + row[7]) << 21
                     | Row(joined, cell + row[8]) << 24) & around;

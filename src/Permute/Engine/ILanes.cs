@@ -5,7 +5,7 @@ namespace Permute.Engine;
 
 /// <summary>
 /// The few vector operations the kernels need, at one width. The kernels are written once over this and compiled apart for every width; only additions,
-/// subtractions and comparisons of single lanes occur, so every width gives the same bits.
+/// subtractions, products, quotients and comparisons of single lanes occur, each rounded by itself, so every width gives the same bits.
 /// </summary>
 /// <typeparam name="TVector">A vector of <see cref="Count"/> floats.</typeparam>
 internal unsafe interface ILanes<TVector> where TVector : struct
@@ -22,6 +22,10 @@ internal unsafe interface ILanes<TVector> where TVector : struct
     static abstract TVector Add(TVector a, TVector b);
 
     static abstract TVector Subtract(TVector a, TVector b);
+
+    static abstract TVector Multiply(TVector a, TVector b);
+
+    static abstract TVector Divide(TVector a, TVector b);
 
     static abstract TVector Max(TVector a, TVector b);
 
@@ -54,6 +58,10 @@ internal readonly unsafe struct Lanes512 : ILanes<Vector512<float>>
 
     public static Vector512<float> Subtract(Vector512<float> a, Vector512<float> b) => a - b;
 
+    public static Vector512<float> Multiply(Vector512<float> a, Vector512<float> b) => a * b;
+
+    public static Vector512<float> Divide(Vector512<float> a, Vector512<float> b) => a / b;
+
     public static Vector512<float> Max(Vector512<float> a, Vector512<float> b) => Vector512.MaxNative(a, b);
 
     public static Vector512<float> Min(Vector512<float> a, Vector512<float> b) => Vector512.MinNative(a, b);
@@ -81,6 +89,10 @@ internal readonly unsafe struct Lanes256 : ILanes<Vector256<float>>
     public static Vector256<float> Add(Vector256<float> a, Vector256<float> b) => a + b;
 
     public static Vector256<float> Subtract(Vector256<float> a, Vector256<float> b) => a - b;
+
+    public static Vector256<float> Multiply(Vector256<float> a, Vector256<float> b) => a * b;
+
+    public static Vector256<float> Divide(Vector256<float> a, Vector256<float> b) => a / b;
 
     public static Vector256<float> Max(Vector256<float> a, Vector256<float> b) => Vector256.MaxNative(a, b);
 
@@ -110,6 +122,10 @@ internal readonly unsafe struct Lanes128 : ILanes<Vector128<float>>
 
     public static Vector128<float> Subtract(Vector128<float> a, Vector128<float> b) => a - b;
 
+    public static Vector128<float> Multiply(Vector128<float> a, Vector128<float> b) => a * b;
+
+    public static Vector128<float> Divide(Vector128<float> a, Vector128<float> b) => a / b;
+
     public static Vector128<float> Max(Vector128<float> a, Vector128<float> b) => Vector128.MaxNative(a, b);
 
     public static Vector128<float> Min(Vector128<float> a, Vector128<float> b) => Vector128.MinNative(a, b);
@@ -137,6 +153,10 @@ internal readonly unsafe struct LanesScalar : ILanes<float>
     public static float Add(float a, float b) => a + b;
 
     public static float Subtract(float a, float b) => a - b;
+
+    public static float Multiply(float a, float b) => a * b;
+
+    public static float Divide(float a, float b) => a / b;
 
     public static float Max(float a, float b) => a > b ? a : b;
 

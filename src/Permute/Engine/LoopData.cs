@@ -9,10 +9,10 @@ internal sealed class LoopData : IDisposable
     public LoopData(SubjectMatrix study, Mask? mask, Model model, RelabelingPlan plan, Measures measures, InstructionSet set, int threads)
     {
         (Study, Mask, Model, Plan, Measures, InstructionSet) = (study, mask, model, plan, measures, set);
-        Groups = new GroupPlan(model.Images);
+        Scoring = Scoring.Of(model);
         Packed = new PackedData(study, model, null, threads);
-        Margin = Packed.Margin(Groups.Depth);
-        Limits = [.. measures.FormingStatistics.Select(u => (float)Packed.SumAt(u))];
+        Margin = Scoring.Margin;
+        Limits = [.. measures.FormingStatistics.Select(u => (float)Scoring.ValueAt(u))];
         Observed = Observe(threads);
         Ranked = Rank(Observed, model.Direction, Math.Min(measures.StepDown, study.Voxels));
         if (measures.Tfce is var (e, h)) (Enhancement, Enhanced, EnhancedMaximum) = Enhance(e, h);
@@ -33,17 +33,18 @@ internal sealed class LoopData : IDisposable
 
     public InstructionSet InstructionSet { get; }
 
-    public GroupPlan Groups { get; }
+    /// <summary>The statistic, as the loop computes it.</summary>
+    public Scoring Scoring { get; }
 
     public PackedData Packed { get; }
 
     /// <summary>The voxels ranked for step-down, packed again by rank.</summary>
     public PackedData Top { get; }
 
-    /// <summary>Sums further apart than this are in their true order.</summary>
+    /// <summary>Values further apart than this are in their true order.</summary>
     public float Margin { get; }
 
-    /// <summary>The forming thresholds as sums.</summary>
+    /// <summary>The forming thresholds as values.</summary>
     public float[] Limits { get; }
 
     /// <summary>Signed T of each voxel as observed.</summary>
@@ -70,11 +71,16 @@ internal sealed class LoopData : IDisposable
     /// <summary>Bit planes per relabeling: one a threshold, and one of signs in direction both.</summary>
     public int Planes => Limits.Length + (Both && Limits.Length > 0 ? 1 : 0);
 
-    /// <summary>The signs of relabeling <paramref name="index"/>: the code of the design row that describes each image.</summary>
-    public void SignsOf(int index, Span<sbyte> signs, Span<int> rows)
+    /// <summary>A signed statistic as the packed data hold it: turned round for the direction less.</summary>
+    public double Upwards(double t) => Model.Direction == Direction.Less ? -t : t;
+
+    /// <summary>Relabelings <paramref name="first"/> to first + count − 1, laid out for the kernel.</summary>
+    public Tile Tile(int first, int count)
     {
-        Plan.Arrange(index, rows, signs);
-        for (int i = 0; i < signs.Length; i++) signs[i] = (sbyte)(signs[i] * Model.Codes![rows[i]]);
+        int n = Model.Images;
+        var (rows, signs) = (new int[count * n], new sbyte[count * n]);
+        for (int k = 0; k < count; k++) Plan.Arrange(first + k, rows.AsSpan(k * n, n), signs.AsSpan(k * n, n));
+        return Scoring.Tile(first, count, rows, signs);
     }
 
     public void Dispose()
@@ -86,13 +92,13 @@ internal sealed class LoopData : IDisposable
     private double[] Observe(int threads)
     {
         var observed = new double[Study.Voxels];
-        var signs = new sbyte[Model.Images];
-        SignsOf(0, signs, new int[Model.Images]);
+        var (rows, signs) = (new int[Model.Images], new sbyte[Model.Images]);
+        Plan.Arrange(0, rows, signs);
         const int Slab = 1024;
         Parallel.For(0, (Study.Voxels + Slab - 1) / Slab, new ParallelOptions { MaxDegreeOfParallelism = Math.Max(1, threads) }, slab =>
         {
-            var exact = new ExactStatistic(Study, Model);
-            exact.Arrange(signs);
+            IExactStatistic exact = Scoring.Exact(Study);
+            exact.Arrange(rows, signs);
             for (int v = slab * Slab; v < Math.Min(Study.Voxels, (slab + 1) * Slab); v++) observed[v] = exact.Signed(v);
         });
         return observed;
@@ -109,7 +115,7 @@ internal sealed class LoopData : IDisposable
     private static int[] Rank(double[] observed, Direction direction, int count)
     {
         var evidence = new double[observed.Length];
-        for (int v = 0; v < observed.Length; v++) evidence[v] = -ExactStatistic.Orient(observed[v], direction);
+        for (int v = 0; v < observed.Length; v++) evidence[v] = -Oriented.Of(observed[v], direction);
         var voxels = new int[observed.Length];
         for (int v = 0; v < voxels.Length; v++) voxels[v] = v;
         Array.Sort(evidence, voxels);

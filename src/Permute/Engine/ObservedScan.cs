@@ -1,3 +1,4 @@
+using System.Numerics;
 using Permute.Data;
 using Permute.Design;
 
@@ -12,17 +13,20 @@ internal static unsafe class ObservedScan
     {
         var up = new bool[loop.Study.Voxels];
         var down = new bool[loop.Study.Voxels];
-        var signs = new sbyte[loop.Model.Images];
-        loop.SignsOf(0, signs, new int[signs.Length]);
-        using ISubsetSums sums = SubsetSums.Create(loop.Groups, loop.InstructionSet);
-        sums.Take(new Tile(loop.Groups, 0, 1, signs));
+        using IBlockKernel kernel = loop.Scoring.Kernel(loop.InstructionSet);
+        Tile tile = loop.Tile(0, 1);
+        kernel.Take(tile);
         float limit = loop.Limits[threshold];
-        float* v = stackalloc float[sums.Width];
-        for (int first = 0; first < loop.Study.Voxels; first += sums.Width)
+        float* v = stackalloc float[kernel.Width];
+        for (int first = 0; first < loop.Study.Voxels; first += kernel.Width)
         {
-            sums.Tabulate(loop.Packed.Block(first / SubjectMatrix.Lanes) + first % SubjectMatrix.Lanes);
-            sums.Sums(0, v);
-            for (int lane = 0; lane < sums.Width && first + lane < up.Length; lane++)
+            kernel.Open(loop.Packed.Block(first / SubjectMatrix.Lanes) + first % SubjectMatrix.Lanes);
+            for (ulong m = kernel.Values(0, v); m != 0; m &= m - 1)
+            {
+                int lane = BitOperations.TrailingZeroCount(m);
+                if (first + lane < up.Length) v[lane] = (float)loop.Scoring.ValueAt(loop.Upwards(loop.Observed[first + lane]));
+            }
+            for (int lane = 0; lane < kernel.Width && first + lane < up.Length; lane++)
             {
                 up[first + lane] = v[lane] > limit;
                 down[first + lane] = loop.Both && v[lane] < -limit;

@@ -48,7 +48,7 @@ public sealed class RelabelingLoop : IDisposable
     private long FixedBytes => loop.Packed.Blocks * (long)loop.Packed.Images * SubjectMatrix.Lanes * sizeof(float)
         + threads * (loop.Enhancement is { } plan ? TfceWorker.Bytes(plan) : 0);
 
-    private long BytesPerRelabeling => TileWorker.BytesPerRelabeling(loop.Planes, loop.Study.Voxels, loop.Ranked.Length);
+    private long BytesPerRelabeling => TileWorker.BytesPerRelabeling(loop.Planes, loop.Study.Voxels, loop.Ranked.Length) + loop.Scoring.BytesPerRelabeling;
 
     /// <summary>All planned relabelings at once, without a folder.</summary>
     public RunResult Run(CancellationToken cancel = default)
@@ -111,13 +111,10 @@ public sealed class RelabelingLoop : IDisposable
         void Work()
         {
             using var worker = new TileWorker(loop, tileSize);
-            var signs = new sbyte[tileSize * loop.Model.Images];
-            var rows = new int[loop.Model.Images];
             foreach (var (pending, first, count) in work.GetConsumingEnumerable(cancel))
             {
-                for (int k = 0; k < count; k++) loop.SignsOf(first + k, signs.AsSpan(k * loop.Model.Images, loop.Model.Images), rows);
                 Chunk chunk = pending.Get(loop);
-                worker.Run(new Tile(loop.Groups, first, count, signs.AsSpan(0, count * loop.Model.Images)), chunk, share =>
+                worker.Run(loop.Tile(first, count), chunk, share =>
                 {
                     if (progress == null) return;
                     double now;

@@ -1,3 +1,4 @@
+using System.Numerics;
 using System.Runtime.InteropServices;
 using Permute.Data;
 using Permute.Statistics;
@@ -12,21 +13,21 @@ namespace Permute.Engine;
 internal sealed unsafe class StepDown : IDisposable
 {
     private readonly LoopData loop;
-    private readonly ISubsetSums sums;
-    private readonly ExactStatistic exact;
+    private readonly IBlockKernel kernel;
+    private readonly IExactStatistic exact;
     private readonly int padded, ranks;
     private readonly float[] observedSum, successive;
     private readonly double[] observed;
     private readonly float* floor;
     private readonly int* places;
 
-    public StepDown(LoopData loop, ISubsetSums sums, ExactStatistic exact, int capacity)
+    public StepDown(LoopData loop, IBlockKernel kernel, IExactStatistic exact, int capacity)
     {
-        (this.loop, this.sums, this.exact) = (loop, sums, exact);
+        (this.loop, this.kernel, this.exact) = (loop, kernel, exact);
         ranks = loop.Ranked.Length;
         padded = loop.Top.Blocks * SubjectMatrix.Lanes;
-        observed = [.. loop.Ranked.Select(v => ExactStatistic.Orient(loop.Observed[v], loop.Model.Direction))];
-        observedSum = [.. observed.Select(t => (float)loop.Packed.SumAt(t))];
+        observed = [.. loop.Ranked.Select(v => Oriented.Of(loop.Observed[v], loop.Model.Direction))];
+        observedSum = [.. observed.Select(t => (float)loop.Scoring.ValueAt(t))];
         successive = new float[ranks];
         floor = (float*)NativeMemory.AlignedAlloc((nuint)(capacity * sizeof(float)), 64);
         places = (int*)NativeMemory.AlignedAlloc((nuint)(capacity * sizeof(int)), 64);
@@ -43,7 +44,11 @@ internal sealed unsafe class StepDown : IDisposable
         {
             EachPass((c, at) =>
             {
-                for (int i = 0; i < raised.Length; i++) sums.Sums(raised[i], values + (long)i * padded + at);
+                for (int i = 0; i < raised.Length; i++)
+                {
+                    float* to = values + (long)i * padded + at;
+                    for (ulong unsure = kernel.Values(raised[i], to); unsure != 0; unsure &= unsure - 1) to[BitOperations.TrailingZeroCount(unsure)] = float.NaN;
+                }
             }, raised.Length > 0);
             for (int p = 0, i = 0; p < tile.Count; p++)
                 if (i < raised.Length && raised[i] == p) Inside(tile, p, values + (long)i++ * padded, highest[p], ref best[p], counts);
@@ -72,7 +77,7 @@ internal sealed unsafe class StepDown : IDisposable
         for (int p = 0; p < tile.Count; p++) floor[p] = highest[p] - loop.Margin;
         EachPass((_, _) =>
         {
-            int found = sums.AboveFloor(loop.Both, floor, places);
+            int found = kernel.AboveFloor(loop.Both, floor, places);
             for (int e = 0; e < found; e++) raised[places[e]] = true;
         }, ranks > 0);
         return [.. Enumerable.Range(0, tile.Count).Where(p => raised[p])];
@@ -81,9 +86,9 @@ internal sealed unsafe class StepDown : IDisposable
     private void EachPass(Action<int, int> pass, bool needed)
     {
         for (int block = 0; needed && block < loop.Top.Blocks; block++)
-            for (int c = 0; c < SubjectMatrix.Lanes; c += sums.Width)
+            for (int c = 0; c < SubjectMatrix.Lanes; c += kernel.Width)
             {
-                sums.Tabulate(loop.Top.Block(block) + c);
+                kernel.Open(loop.Top.Block(block) + c);
                 pass(c, block * SubjectMatrix.Lanes + c);
             }
     }
@@ -107,9 +112,11 @@ internal sealed unsafe class StepDown : IDisposable
     private void Inside(Tile tile, int p, float* v, float outside, ref double best, int[] counts)
     {
         float highest = outside, nearest = float.PositiveInfinity;
+        exact.Arrange(tile.RowsAt(p), tile.SignsAt(p));
         for (int r = ranks - 1; r >= 0; r--)
         {
-            if (loop.Both) v[r] = MathF.Abs(v[r]);
+            if (float.IsNaN(v[r])) v[r] = (float)loop.Scoring.ValueAt(exact.Evidence(loop.Ranked[r]));
+            else if (loop.Both) v[r] = MathF.Abs(v[r]);
             if (v[r] > highest) highest = v[r];
             successive[r] = highest - observedSum[r];
             nearest = MathF.Min(nearest, MathF.Abs(successive[r]));
@@ -119,7 +126,6 @@ internal sealed unsafe class StepDown : IDisposable
             Exactly(tile, p, ref best, counts);
             return;
         }
-        exact.Arrange(tile.SignsAt(p));
         for (int r = 0; r < ranks; r++)
         {
             if (successive[r] > 0) Count(counts, r);
@@ -129,7 +135,7 @@ internal sealed unsafe class StepDown : IDisposable
 
     private void Exactly(Tile tile, int p, ref double best, int[] counts)
     {
-        exact.Arrange(tile.SignsAt(p));
+        exact.Arrange(tile.RowsAt(p), tile.SignsAt(p));
         for (int r = ranks - 1; r >= 0; r--)
         {
             best = Math.Max(best, exact.Evidence(loop.Ranked[r]));

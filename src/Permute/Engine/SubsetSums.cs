@@ -5,36 +5,6 @@ using Permute.Data;
 
 namespace Permute.Engine;
 
-/// <summary>
-/// Signed sums v = Σ sᵢuᵢ of many relabelings at some neighbouring voxels, by tabulated subset sums instead of products: the tables hold every signed sum of
-/// each group of images, so that a relabeling costs one addition per group and vector. One object serves one thread.
-/// </summary>
-internal unsafe interface ISubsetSums : IDisposable
-{
-    /// <summary>Voxels worked on at once: a divisor of 64.</summary>
-    int Width { get; }
-
-    /// <summary>Takes up the relabelings of a tile: what follows speaks of it by place.</summary>
-    void Take(Tile tile);
-
-    /// <summary>Builds the tables for the voxels that begin at <paramref name="data"/>, one row of 64 floats per image.</summary>
-    void Tabulate(float* data);
-
-    /// <summary>The sums of the relabeling at one place of the tile, <see cref="Width"/> of them.</summary>
-    void Sums(int place, float* to);
-
-    /// <summary>Lists the places whose largest sum (or |sum|) here is above their floor. Returns how many.</summary>
-    int AboveFloor(bool both, float* floor, int* places);
-
-    /// <summary>As <see cref="AboveFloor"/>, and sets the bits of the voxels above each limit, from bit <paramref name="shift"/> of their word; words lie plane by plane
-    /// (one plane a limit, and in direction both a last one for negative signs), one word a place, <paramref name="stride"/> words a plane.</summary>
-    int AboveFloorAndLimits(bool both, float* floor, int* places, ReadOnlySpan<float> limits, ulong* words, int stride, int shift);
-
-    /// <summary>Adds 1 to <paramref name="counts"/> (<see cref="Width"/> of them) for every relabeling whose sum is above <paramref name="observed"/> + margin, and lists the
-    /// places with a voxel nearer than the margin, which only double precision can decide. Returns how many.</summary>
-    int CountAbove(bool both, float* observed, float margin, float* counts, int* places);
-}
-
 /// <summary>Whether both signs count: a constant to the compiler.</summary>
 internal interface IWays
 {
@@ -53,15 +23,18 @@ internal readonly struct BothWays : IWays
     public static bool Both => true;
 }
 
-/// <inheritdoc cref="ISubsetSums"/>
-internal sealed unsafe class SubsetSums<TLanes, TVector> : ISubsetSums
+/// <summary>
+/// Signed sums v = Σ sᵢuᵢ of many relabelings at some neighbouring voxels, by tabulated subset sums instead of products: the tables hold every signed sum of
+/// each group of images, so that a relabeling costs one addition per group and vector.
+/// </summary>
+internal sealed unsafe class SubsetSums<TLanes, TVector> : IBlockKernel
     where TLanes : struct, ILanes<TVector>
     where TVector : struct
 {
     private readonly GroupPlan plan;
     private readonly float* tables;
     private readonly ulong everywhere = (1UL << TLanes.Count) - 1;
-    private Tile tile = null!;
+    private SignTile tile = null!;
     private uint[] offsets = [];
 
     public SubsetSums(GroupPlan plan)
@@ -74,15 +47,15 @@ internal sealed unsafe class SubsetSums<TLanes, TVector> : ISubsetSums
 
     public void Dispose() => NativeMemory.AlignedFree(tables);
 
-    public void Take(Tile tile)
+    public void Take(Tile relabelings)
     {
-        this.tile = tile;
+        tile = (SignTile)relabelings;
         if (offsets.Length < tile.Rows.Length) offsets = GC.AllocateUninitializedArray<uint>(tile.Rows.Length);
         for (int i = 0; i < tile.Rows.Length; i++) offsets[i] = (uint)(tile.Rows[i] * Width * sizeof(float));
     }
 
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    public void Tabulate(float* data)
+    public void Open(float* data)
     {
         for (int g = 0, image = 0; g < plan.Bits.Length; image += plan.Bits[g], g++)
         {
@@ -111,7 +84,7 @@ internal sealed unsafe class SubsetSums<TLanes, TVector> : ISubsetSums
         }
     }
 
-    public void Sums(int place, float* to)
+    public ulong Values(int place, float* to)
     {
         fixed (uint* at = &offsets[place * plan.Bits.Length])
         {
@@ -122,6 +95,7 @@ internal sealed unsafe class SubsetSums<TLanes, TVector> : ISubsetSums
             TLanes.Store(v2, to + 2 * TLanes.Count);
             TLanes.Store(v3, to + 3 * TLanes.Count);
         }
+        return 0;
     }
 
     public int AboveFloor(bool both, float* floor, int* places) =>
@@ -296,7 +270,7 @@ internal sealed unsafe class SubsetSums<TLanes, TVector> : ISubsetSums
 internal static class SubsetSums
 {
     /// <summary>A kernel for one thread.</summary>
-    public static ISubsetSums Create(GroupPlan plan, InstructionSet set) => set switch
+    public static IBlockKernel Create(GroupPlan plan, InstructionSet set) => set switch
     {
         InstructionSet.Vector512 => new SubsetSums<Lanes512, System.Runtime.Intrinsics.Vector512<float>>(plan),
         InstructionSet.Vector256 => new SubsetSums<Lanes256, System.Runtime.Intrinsics.Vector256<float>>(plan),

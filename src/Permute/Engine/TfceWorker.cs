@@ -1,10 +1,11 @@
+using System.Numerics;
 using System.Runtime.InteropServices;
 using Permute.Data;
 
 namespace Permute.Engine;
 
 /// <summary>
-/// The largest enhanced value of every relabeling of a tile. Heights come from the loop's single-precision sums; where their rounding could move a relabeling's value past the
+/// The largest enhanced value of every relabeling of a tile. Heights come from the loop's single-precision values; where their rounding could move a relabeling's value past the
 /// observed one, all its heights are computed again in double by the reference formula, and that decides. So p of the observed maximum is that of double precision.
 /// </summary>
 internal sealed unsafe class TfceWorker : IDisposable
@@ -12,18 +13,18 @@ internal sealed unsafe class TfceWorker : IDisposable
     /// <summary>Images held: the tables of a block are built once for so many relabelings.</summary>
     private const int ImagesAtOnce = 16;
     private readonly LoopData loop;
-    private readonly ISubsetSums sums;
-    private readonly ExactStatistic exact;
+    private readonly IBlockKernel kernel;
+    private readonly IExactStatistic exact;
     private readonly EnhancedMaximum maximum;
     private readonly int padded;
     private readonly float* images;
     private EnhancedMap? map;
     private double[] heights = [], values = [];
 
-    public TfceWorker(LoopData loop, ISubsetSums sums, ExactStatistic exact)
+    public TfceWorker(LoopData loop, IBlockKernel kernel, IExactStatistic exact)
     {
-        (this.loop, this.sums, this.exact) = (loop, sums, exact);
-        maximum = new EnhancedMaximum(loop.Enhancement!, loop.Packed.Scale, loop.Packed.DegreesOfFreedom);
+        (this.loop, this.kernel, this.exact) = (loop, kernel, exact);
+        maximum = new EnhancedMaximum(loop.Enhancement!, loop.Scoring.Shape);
         padded = loop.Packed.Blocks * SubjectMatrix.Lanes;
         images = (float*)NativeMemory.AlignedAlloc((nuint)((long)ImagesAtOnce * padded * sizeof(float)), 64);
     }
@@ -32,14 +33,14 @@ internal sealed unsafe class TfceWorker : IDisposable
     public static long Bytes(EnhancementPlan plan) =>
         plan.Cell.Length * (ImagesAtOnce * 4L + 3 * 8 + 4 * 4) + plan.Cells * 4L + EnhancedMaximum.Bytes(plan);
 
-    /// <summary>Works off the tile that <see cref="sums"/> has taken.</summary>
+    /// <summary>Works off the tile that <see cref="kernel"/> has taken.</summary>
     public void Run(Tile tile, Chunk chunk, Action<double> report, CancellationToken cancel)
     {
         for (int first = 0; first < tile.Count; first += ImagesAtOnce)
         {
             cancel.ThrowIfCancellationRequested();
             int count = Math.Min(ImagesAtOnce, tile.Count - first);
-            Sums(first, count);
+            Values(tile, first, count);
             for (int p = first; p < first + count; p++)
                 chunk.Tfce![tile.First + tile.Order[p] - chunk.First] = Largest(tile, p, images + (long)(p - first) * padded);
             report((double)count / tile.Count);
@@ -61,12 +62,22 @@ internal sealed unsafe class TfceWorker : IDisposable
         NativeMemory.AlignedFree(images);
     }
 
-    private void Sums(int first, int count)
+    private void Values(Tile tile, int first, int count)
     {
-        for (int v = 0; v < padded; v += sums.Width)
+        for (int v = 0; v < padded; v += kernel.Width)
         {
-            sums.Tabulate(loop.Packed.Block(v / SubjectMatrix.Lanes) + v % SubjectMatrix.Lanes);
-            for (int p = 0; p < count; p++) sums.Sums(first + p, images + (long)p * padded + v);
+            kernel.Open(loop.Packed.Block(v / SubjectMatrix.Lanes) + v % SubjectMatrix.Lanes);
+            for (int p = 0; p < count; p++)
+            {
+                float* to = images + (long)p * padded + v;
+                ulong unsure = kernel.Values(first + p, to);
+                if (unsure != 0) exact.Arrange(tile.RowsAt(first + p), tile.SignsAt(first + p));
+                for (; unsure != 0; unsure &= unsure - 1)
+                {
+                    int lane = BitOperations.TrailingZeroCount(unsure);
+                    if (v + lane < loop.Study.Voxels) to[lane] = (float)loop.Scoring.ValueAt(loop.Upwards(exact.Signed(v + lane)));
+                }
+            }
         }
     }
 
@@ -81,11 +92,12 @@ internal sealed unsafe class TfceWorker : IDisposable
         return IsClose(largest, top) ? Exactly(tile, p) : largest;
     }
 
-    /// <summary>The height of the largest sum is the one that rounding moves furthest.</summary>
-    private bool IsClose(double value, float topSum)
+    /// <summary>The height of the largest value is the one that rounding moves furthest.</summary>
+    private bool IsClose(double value, float topValue)
     {
-        double furthest = topSum + (double)loop.Margin, top = maximum.Height(furthest);
-        double shift = furthest * loop.Packed.Scale < 1 ? top - maximum.Height(topSum) : double.PositiveInfinity;
+        ScoreShape shape = loop.Scoring.Shape;
+        double furthest = topValue + (double)loop.Margin, top = shape.Height(furthest);
+        double shift = shape.Share(furthest) < 1 ? top - shape.Height(topValue) : double.PositiveInfinity;
         // At least the tolerance for ties, so that what ties is decided in double too.
         double margin = Math.Max(loop.Enhancement!.Margin(value, top, shift), 1e-8 * Math.Max(1, value));
         return !(Math.Abs(value - loop.EnhancedMaximum) > margin);
@@ -95,7 +107,7 @@ internal sealed unsafe class TfceWorker : IDisposable
     {
         map ??= new EnhancedMap(loop.Enhancement!);
         if (heights.Length == 0) (heights, values) = (new double[loop.Study.Voxels], new double[loop.Study.Voxels]);
-        exact.Arrange(tile.SignsAt(p));
+        exact.Arrange(tile.RowsAt(p), tile.SignsAt(p));
         for (int v = 0; v < heights.Length; v++) heights[v] = loop.Both ? exact.Signed(v) : exact.Evidence(v);
         return Exactly(map, heights, loop.Both, values);
     }

@@ -1,3 +1,4 @@
+using System.Numerics;
 using System.Runtime.InteropServices;
 using Permute.Data;
 using Permute.Statistics;
@@ -6,15 +7,15 @@ namespace Permute.Engine;
 
 /// <summary>
 /// One thread of the relabeling loop. It takes a tile of relabelings through all voxels, block by block, and writes what it finds into their chunk. Single
-/// precision nominates: only where a block's best sum comes within the rounding margin of a relabeling's best so far is the statistic computed in double, by
+/// precision nominates: only where a block's best value comes within the rounding margin of a relabeling's best so far is the statistic computed in double, by
 /// the reference formula, and that decides.
 /// </summary>
 internal sealed unsafe class TileWorker : IDisposable
 {
     private const int BlocksAtOnce = 8;
     private readonly LoopData loop;
-    private readonly ISubsetSums sums;
-    private readonly ExactStatistic exact;
+    private readonly IBlockKernel kernel;
+    private readonly IExactStatistic exact;
     private readonly ClusterScan? scan;
     private readonly StepDown stepDown;
     private readonly TfceWorker? tfce;
@@ -31,10 +32,10 @@ internal sealed unsafe class TileWorker : IDisposable
     public TileWorker(LoopData loop, int capacity)
     {
         (this.loop, this.capacity) = (loop, capacity);
-        sums = SubsetSums.Create(loop.Groups, loop.InstructionSet);
-        exact = new ExactStatistic(loop.Study, loop.Model);
-        stepDown = new StepDown(loop, sums, exact, capacity);
-        tfce = loop.Enhancement == null ? null : new TfceWorker(loop, sums, exact);
+        kernel = loop.Scoring.Kernel(loop.InstructionSet);
+        exact = loop.Scoring.Exact(loop.Study);
+        stepDown = new StepDown(loop, kernel, exact, capacity);
+        tfce = loop.Enhancement == null ? null : new TfceWorker(loop, kernel, exact);
         best = new double[capacity];
         floor = Allocate<float>(capacity);
         highest = Allocate<float>(capacity);
@@ -59,7 +60,7 @@ internal sealed unsafe class TileWorker : IDisposable
     /// <summary>Works off the tile and writes its results into <paramref name="chunk"/>. <paramref name="report"/> hears the share of the tile just done.</summary>
     public void Run(Tile tile, Chunk chunk, Action<double> report, CancellationToken cancel)
     {
-        sums.Take(tile);
+        kernel.Take(tile);
         if (tfce != null)
         {
             Action<double> all = report;
@@ -94,7 +95,7 @@ internal sealed unsafe class TileWorker : IDisposable
     /// <inheritdoc/>
     public void Dispose()
     {
-        sums.Dispose();
+        kernel.Dispose();
         stepDown.Dispose();
         tfce?.Dispose();
         scan?.Dispose();
@@ -113,27 +114,28 @@ internal sealed unsafe class TileWorker : IDisposable
     private void RunBlock(Tile tile, Chunk chunk, int block, int slot)
     {
         float* data = loop.Packed.Block(block);
-        for (int c = 0; c < SubjectMatrix.Lanes; c += sums.Width)
+        for (int c = 0; c < SubjectMatrix.Lanes; c += kernel.Width)
         {
-            sums.Tabulate(data + c);
+            kernel.Open(data + c);
             int found = scan == null
-                ? sums.AboveFloor(loop.Both, floor, places)
-                : sums.AboveFloorAndLimits(
+                ? kernel.AboveFloor(loop.Both, floor, places)
+                : kernel.AboveFloorAndLimits(
                     loop.Both, floor, places, loop.Limits, fresh + (long)slot * loop.Planes * capacity, capacity, c);
-            Decide(tile, block * SubjectMatrix.Lanes + c, found);
+            Decide(tile, block * SubjectMatrix.Lanes + c, found, slot);
             if (loop.Measures.Uncorrected) Count(tile, chunk, block * SubjectMatrix.Lanes + c);
         }
     }
 
-    private void Decide(Tile tile, int firstVoxel, int found)
+    private void Decide(Tile tile, int firstVoxel, int found, int slot)
     {
-        Span<float> here = stackalloc float[sums.Width];
-        int width = Math.Min(sums.Width, loop.Study.Voxels - firstVoxel);
+        Span<float> here = stackalloc float[kernel.Width];
+        int width = Math.Min(kernel.Width, loop.Study.Voxels - firstVoxel);
         fixed (float* v = here)
             for (int e = 0; e < found; e++)
             {
                 int p = places[e];
-                sums.Sums(p, v);
+                ulong unsure = kernel.Values(p, v);
+                if (unsure != 0) Resolve(tile, p, firstVoxel, slot, unsure, v);
                 float top = float.NegativeInfinity;
                 for (int lane = 0; lane < width; lane++)
                 {
@@ -144,34 +146,54 @@ internal sealed unsafe class TileWorker : IDisposable
                 if (top <= floor[p]) continue;
                 floor[p] = MathF.Max(floor[p], top - loop.Margin);
                 highest[p] = MathF.Max(highest[p], top);
-                exact.Arrange(tile.SignsAt(p));
+                exact.Arrange(tile.RowsAt(p), tile.SignsAt(p));
                 for (int lane = 0; lane < width; lane++)
                     if (v[lane] >= floor[p]) best[p] = Math.Max(best[p], exact.Evidence(firstVoxel + lane));
             }
     }
 
+    /// <summary>Puts the exact statistic in the place of values that single precision cannot tell, in the bits of the forming thresholds too.</summary>
+    private void Resolve(Tile tile, int p, int firstVoxel, int slot, ulong unsure, float* v)
+    {
+        exact.Arrange(tile.RowsAt(p), tile.SignsAt(p));
+        for (; unsure != 0; unsure &= unsure - 1)
+        {
+            int lane = BitOperations.TrailingZeroCount(unsure), voxel = firstVoxel + lane;
+            if (voxel >= loop.Study.Voxels) continue;
+            double t = loop.Upwards(exact.Signed(voxel));
+            v[lane] = (float)loop.Scoring.ValueAt(t);
+            ulong bit = 1UL << (voxel % SubjectMatrix.Lanes);
+            ulong* word = fresh + (long)slot * loop.Planes * capacity + p;
+            for (int plane = 0; plane < loop.Planes; plane++, word += capacity)
+            {
+                bool set = plane == loop.Limits.Length ? t < 0 : (loop.Both ? Math.Abs(t) : t) > loop.Measures.FormingStatistics[plane];
+                *word = set ? *word | bit : *word & ~bit;
+            }
+        }
+    }
+
     private void Count(Tile tile, Chunk chunk, int firstVoxel)
     {
-        int width = Math.Min(sums.Width, loop.Study.Voxels - firstVoxel);
-        for (int lane = 0; lane < sums.Width; lane++)
+        int width = Math.Min(kernel.Width, loop.Study.Voxels - firstVoxel);
+        for (int lane = 0; lane < kernel.Width; lane++)
         {
             counted[lane] = 0;
             // A padded lane watches for nothing.
             watched[lane] = lane < width
-                ? (float)loop.Packed.SumAt(ExactStatistic.Orient(loop.Observed[firstVoxel + lane], loop.Model.Direction))
+                ? (float)loop.Scoring.ValueAt(Oriented.Of(loop.Observed[firstVoxel + lane], loop.Model.Direction))
                 : float.MaxValue;
         }
-        int found = sums.CountAbove(loop.Both, watched, loop.Margin, counted, places);
-        Span<float> here = stackalloc float[sums.Width];
+        int found = kernel.CountAbove(loop.Both, watched, loop.Margin, counted, places);
+        Span<float> here = stackalloc float[kernel.Width];
         fixed (float* v = here)
             for (int e = 0; e < found; e++)
             {
-                sums.Sums(places[e], v);
-                exact.Arrange(tile.SignsAt(places[e]));
+                bool unsure = kernel.Values(places[e], v) != 0;
+                exact.Arrange(tile.RowsAt(places[e]), tile.SignsAt(places[e]));
                 for (int lane = 0; lane < width; lane++)
                 {
                     float apart = (loop.Both ? MathF.Abs(v[lane]) : v[lane]) - watched[lane];
-                    if (MathF.Abs(apart) <= loop.Margin && Reaches(firstVoxel + lane)) counted[lane]++;
+                    if ((unsure || MathF.Abs(apart) <= loop.Margin) && Reaches(firstVoxel + lane)) counted[lane]++;
                 }
             }
         lock (chunk)
@@ -179,7 +201,7 @@ internal sealed unsafe class TileWorker : IDisposable
     }
 
     private bool Reaches(int voxel) =>
-        Ties.Reaches(exact.Evidence(voxel), ExactStatistic.Orient(loop.Observed[voxel], loop.Model.Direction));
+        Ties.Reaches(exact.Evidence(voxel), Oriented.Of(loop.Observed[voxel], loop.Model.Direction));
 
     /// <summary>From words by place to words by voxel: the eight fresh words of a place and plane fill one cache line of its row.</summary>
     private void Transpose(int count, int firstWord, int fetched)
@@ -199,7 +221,7 @@ internal sealed unsafe class TileWorker : IDisposable
     {
         int at = tile.First + tile.Order[p] - chunk.First;
         ulong* row = bits + (long)p * loop.Planes * words;
-        if (loop.Measures.Mass) exact.Arrange(tile.SignsAt(p));
+        if (loop.Measures.Mass) exact.Arrange(tile.RowsAt(p), tile.SignsAt(p));
         for (int j = 0; j < loop.Limits.Length; j++)
         {
             var above = new ReadOnlySpan<ulong>(row + (long)j * words, words);
@@ -226,7 +248,7 @@ internal sealed unsafe class TileWorker : IDisposable
         int count = 0;
         for (int w = 0; w < above.Length; w++)
             for (ulong m = above[w]; m != 0; m &= m - 1)
-                values[count++] = exact.Evidence((w << 6) + System.Numerics.BitOperations.TrailingZeroCount(m)) - u;
+                values[count++] = exact.Evidence((w << 6) + BitOperations.TrailingZeroCount(m)) - u;
         return count == 0 ? default : scan!.Scan(above, values.AsSpan(0, count));
     }
 

@@ -55,7 +55,7 @@ internal static class DesignChecks
     internal static CheckSummary FieldTheoryDegreesOfFreedom(int degrees) => Check.Of(
         "degrees-of-freedom-field-theory", degrees < 8 ? Check.Warning : Check.Good, degrees, 8, Check.OurLimit,
         degrees < 8
-            ? $"{degrees} degrees of freedom are too few for field theory to mean much: smoothness is badly known and the t field very rough. Use the permutation results."
+            ? $"{degrees} degrees of freedom are too few for field theory to mean much: smoothness is badly known and the field very rough. Use the permutation results."
             : $"{degrees} degrees of freedom allow field theory.");
 
     internal static CheckSummary FormingP(double perTail)

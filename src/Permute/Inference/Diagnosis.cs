@@ -32,7 +32,7 @@ public static class Diagnosis
             if (voxelsExpected is not { } ev || clustersExpected is not { } ec || !(ec > 0)) return null;
             string above = $"{clusters.FormingStatistic:0.###}";
             bool voxelsApart = Apart(voxels.Mean, ev, voxels.Error), clustersApart = Apart(number.Mean, ec, number.Error);
-            string marginal = $"The relabelings put {Percent(voxels.Mean, ev)} voxels above {above} than the t distribution expects: its assumption on the marginal "
+            string marginal = $"The relabelings put {Percent(voxels.Mean, ev)} voxels above {above} than the theory expects: its assumption on the marginal "
                 + "distribution (normal errors) does not hold here.";
             const string Lattice = "the assumption of a smooth field on a region without holes does not hold here (coarse lattice, holes in the mask, or a "
                 + "smoothness that reaches further than neighbouring voxels tell).";

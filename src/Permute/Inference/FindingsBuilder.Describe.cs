@@ -26,9 +26,9 @@ public static partial class FindingsBuilder
     public static ModelSummary Describe(Model model) => new()
     {
         Effect = model.Effect,
-        Direction = model.Direction.ToString().ToLowerInvariant(),
+        Direction = model.Statistic == "f" ? "none" : model.Direction.ToString().ToLowerInvariant(),
         Statistic = model.Statistic,
-        DegreesOfFreedom = model.DegreesOfFreedom,
+        DegreesOfFreedom = model.Statistic == "f" ? new[] { model.Regressors.Count, model.DegreesOfFreedom } : model.DegreesOfFreedom,
         Exact = model.Exact,
         Assumption = model.Relabelings.Assumption,
     };

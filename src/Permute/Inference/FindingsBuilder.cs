@@ -26,8 +26,8 @@ public static partial class FindingsBuilder
         if (input.Study.Mask is not { } mask) summary = summary with { Variables = height.Variables() };
         else
         {
-            maps["t"] = input.Observed;
-            maps["estimate"] = input.Estimate;
+            maps[input.Model.Statistic] = input.Observed;
+            if (input.Model.Regressors.Count == 1) maps["estimate"] = input.Estimate; // several tested columns have no one size
             height.AddMaps(maps);
             if (input.Smoothness?.LocalResels is { Length: > 0 } resels) maps["local-resels"] = resels;
             var clusters = new ClusterFindings(input, mask, theory, rules);

@@ -71,7 +71,7 @@ internal sealed class HeightFindings
         {
             Name = name,
             Value = input.Observed[v],
-            Estimate = input.Estimate[v],
+            Estimate = input.Model.Regressors.Count == 1 ? input.Estimate[v] : null,
             Sign = Evidence.Sign(input.Observed[v]),
             UncorrectedP = UncorrectedAt(v),
             FalseDiscoveryP = falseDiscovery?[v],

@@ -5,7 +5,7 @@ namespace Permute.Inference;
 /// <summary>The parametric rules of one analysis: field theory where it is defined, or the reason why it is not, and Bonferroni.</summary>
 public sealed class ParametricSide
 {
-    private readonly TField field;
+    private readonly Field field;
     private readonly ReselCounts? resels;
     private readonly int voxels, dimensions, sides;
     private readonly double alpha;
@@ -13,7 +13,7 @@ public sealed class ParametricSide
     /// <summary>The rules for what <paramref name="input"/> tests.</summary>
     public ParametricSide(InferenceInput input)
     {
-        field = new TField(input.Model.DegreesOfFreedom);
+        field = Marginal.Of(input.Model);
         (voxels, alpha) = (input.Observed.Length, input.Request.Alpha);
         sides = Evidence.Sides(input.Model.Direction);
         dimensions = input.Study.Mask?.Dimensions ?? 0;

@@ -96,7 +96,7 @@ public sealed record ModelSummary
     /// <summary>"mean", or "column: A minus B".</summary>
     public required string Effect { get; init; }
 
-    /// <summary>greater, less or both.</summary>
+    /// <summary>greater, less or both; none for an F.</summary>
     public required string Direction { get; init; }
 
     /// <summary>t, welch, smoothed-variance-t or f.</summary>

@@ -25,12 +25,13 @@ public unsafe class EnhancementTests
             Mask mask = nx * ny * nz == 1 ? Mask.Whole(Grid.Plain(1, 1, 1)) : Made.Mask(nx, ny, nz);
             var plan = new EnhancementPlan(mask, Neighbourhood.Of(neighbours), e, h);
             var map = new EnhancedMap(plan);
-            using var maximum = new EnhancedMaximum(plan, 1 / Math.Sqrt(8), 7);
+            var shape = new ScoreShape(Squared: true, 1 / Math.Sqrt(8), 7, Root: true);
+            using var maximum = new EnhancedMaximum(plan, shape);
             for (int seed = 0; seed < 3; seed++)
             {
                 // The last with many ties: sums in steps of a quarter.
                 float[] sums = [.. Made.SmoothRows(1, mask, seed)[0].Select(t => (float)(seed == 2 ? Math.Round(t) / 4 : t / 4)).Select(v => Math.Clamp(v, -2.7f, 2.7f))];
-                double[] t = [.. sums.Select(v => Math.Sign(v) * maximum.Height(v))];
+                double[] t = [.. sums.Select(v => Math.Sign(v) * shape.Height(v))];
                 foreach (int sign in new[] { 1, -1 })
                 {
                     double[] expected = ThresholdFreeEnhancement.Of(mask, [.. t.Select(x => sign * x)], neighbours, e, h), found = new double[t.Length];

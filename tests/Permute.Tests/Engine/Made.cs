@@ -76,12 +76,21 @@ internal static class Made
         var order = new int[model.Images];
         var sign = new sbyte[model.Images];
         plan.Arrange(k, order, sign);
-        // Image i is described by design row order[i] with its sign turned: the same as data sign·y moved to that row.
+        // Image i is described by design row order[i] with its sign turned: the same as residuals sign·e moved to that row.
         return [.. Enumerable.Range(0, rows[0].Length).Select(v =>
         {
-            var y = new double[model.Images];
-            for (int i = 0; i < y.Length; i++) y[order[i]] = sign[i] * rows[i][v];
+            double[] e = [.. rows.Select(r => r[v])], y = new double[model.Images];
+            model.ReducedResiduals(e);
+            for (int i = 0; i < y.Length; i++) y[order[i]] = sign[i] * e[i];
             model.ReducedResiduals(y);
+            if (model.Statistic == "f")
+            {
+                // Extra sum of squares.
+                double reduced = y.Sum(x => x * x);
+                model.FullResiduals(y);
+                double full = y.Sum(x => x * x);
+                return (reduced - full) / model.Regressors.Count / (full / model.DegreesOfFreedom);
+            }
             double t = Permute.Statistics.PartialT.Of(y, model.Regressor, model.DegreesOfFreedom);
             return model.Direction switch { Direction.Greater => t, Direction.Less => -t, _ => Math.Abs(t) };
         })];

@@ -21,6 +21,8 @@ internal static class Some
 
         public void Unrank(long rank, Span<int> order, Span<sbyte> sign) => throw new NotSupportedException();
 
+        public IRelabelings Grown(int images) => this;
+
         public void Draw(ref Philox random, Span<int> order, Span<sbyte> sign) => throw new NotSupportedException();
     }
 

@@ -15,8 +15,9 @@ public class RefeedingTests
     public static TheoryData<string, Direction> Designs()
     {
         var all = new TheoryData<string, Direction>();
-        foreach (string design in new[] { "mean of 6", "3 against 3", "2 against 4", "4 pairs", "blocks of 3 and 4" })
+        foreach (string design in new[] { "mean of 6", "3 against 3", "2 against 4", "4 pairs", "blocks of 3 and 4", "slope", "slope in blocks" })
             foreach (Direction d in Enum.GetValues<Direction>()) all.Add(design, d);
+        foreach (string design in new[] { "F of 3 groups", "F in blocks", "F of a mean" }) all.Add(design, Direction.Greater);
         return all;
     }
 
@@ -52,6 +53,12 @@ public class RefeedingTests
         "3 against 3" => Made.Halves(6, direction),
         "2 against 4" => Questions.TwoGroups([true, false, false, true, false, false], direction),
         "4 pairs" => Made.Halves(8, direction, pairs: true),
+        "slope" => Questions.Linear([[1, 2, 3, 5, 9]], [Questions.Ones(5)], direction, "x"),
+        "slope in blocks" => Questions.Linear([[1, 2, 4, 7, 7, 1, 3]], Questions.Indicators([0, 0, 0, 0, 1, 1, 1]), direction, "x", [0, 0, 0, 0, 1, 1, 1]),
+        "F of 3 groups" => Questions.Linear(Questions.Indicators([0, 1, 2, 2, 1, 0])[1..], [Questions.Ones(6)], direction, "g"),
+        "F in blocks" => Questions.Linear(
+            Questions.Indicators([0, 1, 2, 2, 1, 0, 1])[1..], Questions.Indicators([0, 0, 0, 1, 1, 1, 1]), direction, "g", [0, 0, 0, 1, 1, 1, 1]),
+        "F of a mean" => Questions.Linear([Questions.Ones(6)], [], direction, "mean", flips: true, statistic: "f"),
         _ => Questions.TwoGroups([true, false, false, true, true, false, false], direction, blockOf: [0, 0, 0, 1, 1, 1, 1]),
     };
 
