@@ -46,6 +46,10 @@ internal sealed class AnalysisOptions
     private readonly Option<double?> alpha = Opt.Alpha();
     private readonly Option<double[]?> assumeFwhm = Opt.List(
         "--assume-fwhm", "X,Y,Z", 3, "For the field theory: this smoothness (mm) instead of the estimate.");
+    private readonly Option<bool> stopWhenSettled = Opt.Flag(
+        "--stop-when-settled", "End the run when every p of interest is settled against alpha.");
+    private readonly Option<bool> extrapolateTail = Opt.Flag(
+        "--extrapolate-tail", "Approximate small p by a generalised Pareto tail.");
     private readonly Option<string?> folder = Opt.Text(
         "--out", "DIR", $"The run folder; the same analysis found there is resumed; default {Standard.Out}.");
     private readonly Option<bool> replace = Opt.Flag("--replace", "Replace another analysis found in the run folder.");
@@ -56,7 +60,7 @@ internal sealed class AnalysisOptions
         Option[] shared =
         [
             images, study, variables, mask, effect, levels, asLevels, dropMissing, adjust, exchangeInside, design, contrast, direction, statistic, record, formingP,
-            formingValue, neighbours, relabelings, seed, threads, memory, alpha, assumeFwhm,
+            formingValue, neighbours, relabelings, seed, threads, memory, alpha, assumeFwhm, stopWhenSettled, extrapolateTail,
         ];
         foreach (Option option in writes ? [.. shared, folder, replace] : shared) verb.Options.Add(option);
         statistic.Validators.Add(r =>
@@ -97,6 +101,8 @@ internal sealed class AnalysisOptions
         MemoryGb = parse.GetValue(memory),
         Alpha = parse.GetValue(alpha) ?? Standard.Alpha,
         AssumeFwhmMm = parse.GetValue(assumeFwhm) is { Length: > 0 } mm ? mm : null,
+        StopWhenSettled = parse.GetValue(stopWhenSettled),
+        ExtrapolateTail = parse.GetValue(extrapolateTail),
         Out = parse.GetValue(folder) ?? Standard.Out,
         Replace = parse.GetValue(replace),
     };

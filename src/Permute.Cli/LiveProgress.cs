@@ -10,20 +10,28 @@ internal sealed class LiveProgress : IProgress<AnalysisProgress>
     private StageClock stage = new("", TimeProvider.System);
     private ProgressTask task;
 
-    private LiveProgress(ProgressContext context) => (this.context, task) = (context, context.AddTask("checking the inputs").IsIndeterminate());
+    private readonly IAnsiConsole console;
+
+    private LiveProgress(IAnsiConsole console, ProgressContext context) =>
+        (this.console, this.context, task) = (console, context, context.AddTask("checking the inputs").IsIndeterminate());
 
     public static T While<T>(Func<IProgress<AnalysisProgress>, T> work)
     {
         IAnsiConsole console = AnsiConsole.Create(new AnsiConsoleSettings { Out = new AnsiConsoleOutput(Console.Error) });
         return console.Progress().AutoClear(true)
             .Columns(new TaskDescriptionColumn { Alignment = Justify.Left }, new ProgressBarColumn(), new SpinnerColumn())
-            .Start(context => work(new LiveProgress(context)));
+            .Start(context => work(new LiveProgress(console, context)));
     }
 
     public void Report(AnalysisProgress value)
     {
         lock (gate)
         {
+            if (value.Caution != null)
+            {
+                console.WriteLine($"permute: caution: {value.Caution}");
+                return;
+            }
             if (value.Stage != stage.Name)
             {
                 stage = new StageClock(value.Stage, TimeProvider.System);

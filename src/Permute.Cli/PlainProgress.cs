@@ -22,6 +22,11 @@ internal sealed class PlainProgress : IProgress<AnalysisProgress>
     {
         lock (gate)
         {
+            if (value.Caution != null)
+            {
+                Say($"caution: {value.Caution}");
+                return;
+            }
             bool fresh = value.Stage != stage.Name;
             if (fresh) (stage, said) = (new StageClock(value.Stage, clock), 0);
             // Threads report as they come: what is older than the last line is old news.

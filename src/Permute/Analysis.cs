@@ -16,6 +16,7 @@ public static class Analysis
         RunFolder.Probe(request.Out);
         using PreparedRun run = PreparedRun.Load(request, progress, cancel);
         Create(run);
+        foreach (string caution in run.Cautions()) progress?.Report(new AnalysisProgress("", 0, 0) { Caution = caution });
         using RelabelingLoop loop = run.Loop(request.Threads);
         Fill(run, loop, 1, 1, progress, cancel);
         return Conclude(run, loop);
@@ -27,6 +28,7 @@ public static class Analysis
         RunFolder.Probe(request.Out);
         using PreparedRun run = PreparedRun.Load(request, progress, cancel);
         Create(run);
+        foreach (string caution in run.Cautions()) progress?.Report(new AnalysisProgress("", 0, 0) { Caution = caution });
         return request.Out;
     }
 
@@ -90,6 +92,11 @@ public static class Analysis
     private static void Fill(PreparedRun run, RelabelingLoop loop, int part, int of, IProgress<AnalysisProgress>? progress, CancellationToken cancel)
     {
         var store = new ChunkFolder(RunFolder.Chunks(run.Request.Out), run.Fingerprint, run.Plan.Count, part, of);
+        if (run.Request.StopWhenSettled)
+        {
+            StoppingRun.Fill(run, loop, store, progress, cancel);
+            return;
+        }
         int missing = store.Missing().Sum(r => r.Count);
         IProgress<double>? inner = progress == null ? null : new Relay(done => progress.Report(new AnalysisProgress("relabelings", done, missing)));
         loop.Fill(store, inner, cancel);
@@ -98,7 +105,8 @@ public static class Analysis
     private static Findings Conclude(PreparedRun run, RelabelingLoop loop)
     {
         var store = new ChunkFolder(RunFolder.Chunks(run.Request.Out), run.Fingerprint, run.Plan.Count);
-        RunResult result = loop.Join(store.Done(), run.Request.Out);
+        var (chunks, settling) = run.Request.StopWhenSettled ? StoppingRun.Used(run, store) : (store.Done(), null);
+        RunResult result = loop.Join(chunks, run.Request.Out);
         SmoothnessEstimate? smoothness = null;
         double[]? fwhm = null;
         ReselCounts? resels = null;
@@ -120,6 +128,7 @@ public static class Analysis
             Plan = run.Plan,
             Maxima = result.Maxima,
             Complete = result.Maxima.Count == run.Plan.Count,
+            Settling = settling,
             Observed = loop.Observed,
             Estimate = Estimate(run),
             Above = [.. run.Forming.Select((f, j) => loop.ObservedAbove(j) is var (positive, negative)

@@ -91,6 +91,12 @@ public sealed record AnalysisRequest
     /// <summary>Adjust extents for local smoothness.</summary>
     public bool UnevenSmoothness { get; init; }
 
+    /// <summary>Stop as soon as every p of interest is settled against <see cref="Alpha"/>.</summary>
+    public bool StopWhenSettled { get; init; }
+
+    /// <summary>Approximate small p by a generalised Pareto tail of the maxima.</summary>
+    public bool ExtrapolateTail { get; init; }
+
     /// <summary>The run folder.</summary>
     public string Out { get; init; } = "permute-run";
 

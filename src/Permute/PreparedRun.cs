@@ -36,6 +36,9 @@ internal sealed class PreparedRun : IDisposable
 
     public required string Fingerprint { get; init; }
 
+    /// <summary>What the reading of the design left to say.</summary>
+    public required IReadOnlyList<string> DesignCautions { get; init; }
+
     /// <summary>Threads to use.</summary>
     public int Threads => Request.Threads > 0 ? Request.Threads : Environment.ProcessorCount;
 
@@ -67,6 +70,7 @@ internal sealed class PreparedRun : IDisposable
             Measures = measures,
             Forming = forming,
             Fingerprint = FingerprintOf(study, design, plan, measures),
+            DesignCautions = design.Cautions,
         };
     }
 
@@ -79,6 +83,20 @@ internal sealed class PreparedRun : IDisposable
         loop.Dispose();
         throw new InputException(
             $"--memory {Request.MemoryGb} GB is not enough for {Study.Data.Images} images of {Study.Data.Voxels} voxels: at least {(Overhead + Study.Data.Bytes + loop.Bytes) / 1e9:F2} GB are needed with {(threads > 0 ? threads : Environment.ProcessorCount)} threads; allow more, or use fewer threads or a smaller mask.");
+    }
+
+    /// <summary>What the user should know before the long work: results that cannot be reached, blocks without an exchange, oddities of the data.</summary>
+    public IEnumerable<string> Cautions()
+    {
+        double smallest = Plan.SmallestP(Model.Direction, Plan.Count);
+        if (smallest > Request.Alpha)
+            yield return $"the smallest p that {Plan.Count} relabelings of this design can reach is {smallest:0.####}, so no result can reach α {Request.Alpha}; "
+                + (Plan.Exhaustive || (double)Plan.Family.Ties(Model.Direction) / (double)Plan.Family.Possible > Request.Alpha
+                    ? $"{Reachability.ImagesNeeded(Model, Request.Alpha)} images would be needed."
+                    : $"at least {Math.Ceiling(1 / Request.Alpha)} relabelings are needed.");
+        foreach (string caution in DesignCautions) yield return caution;
+        const string Mark = "Caution: ";
+        foreach (string note in Study.Notes.Where(n => n.StartsWith(Mark, StringComparison.Ordinal))) yield return note[Mark.Length..];
     }
 
     /// <summary>Peak memory foreseen with <paramref name="loop"/>, bytes; reading a derived mask holds every voxel of the grid for a while.</summary>

@@ -44,7 +44,7 @@ public class HelpTests
 
     [Theory]
     [InlineData("test", "--images --study --variables --mask --effect --levels --as-levels --drop-missing --adjust --exchange-inside --design --contrast --direction --statistic --record "
-        + "--forming-p --forming-value --neighbours --relabelings --seed --threads --memory --alpha --assume-fwhm --out --replace --json")]
+        + "--forming-p --forming-value --neighbours --relabelings --seed --threads --memory --alpha --assume-fwhm --stop-when-settled --extrapolate-tail --out --replace --json")]
     [InlineData("theory", "--mask --resels --voxels --assume-fwhm --assume-fwhm-voxels --df --alpha --direction --forming-p --forming-value --json")]
     [InlineData("work", "--part --of --threads")]
     [InlineData("finish", "--json")]

@@ -32,6 +32,16 @@ internal sealed class ChunkFolder : IChunkStore
     public IReadOnlyList<Chunk> Done() =>
         [.. Ranges().Where(r => File.Exists(PathOf(r.First, r.Count))).Select(r => Load(r.First, r.Count)).OfType<Chunk>()];
 
+    /// <summary>The chunks done from relabeling <paramref name="first"/>, which begins one, on in unbroken order; each is read when it is asked for.</summary>
+    public IEnumerable<Chunk> InOrder(int first)
+    {
+        foreach (var (from, number) in Ranges().Where(r => r.First >= first))
+        {
+            if (!File.Exists(PathOf(from, number)) || Load(from, number) is not { } chunk) yield break;
+            yield return chunk;
+        }
+    }
+
     /// <inheritdoc/>
     public void Save(Chunk chunk)
     {

@@ -7,7 +7,7 @@ public static partial class FindingsBuilder
     public static Findings Build(InferenceInput input)
     {
         double smallestP = input.Plan.SmallestP(input.Model.Direction, input.Maxima.Count), alpha = input.Request.Alpha;
-        var rules = new RuleRows(alpha, input.Model.Relabelings.Possible, smallestP);
+        var rules = new RuleRows(alpha, input.Model.Relabelings.Possible, smallestP) { ExtrapolateTail = input.Request.ExtrapolateTail };
         var theory = new ParametricSide(input);
         var height = new HeightFindings(input, theory, rules);
         var maps = new Dictionary<string, double[]>();
@@ -42,6 +42,6 @@ public static partial class FindingsBuilder
                 AgreementLabels = maps.ContainsKey("agreement") ? Agreement.Labels : summary.AgreementLabels,
             };
         }
-        return new Findings { Summary = summary, Mask = input.Study.Mask, Maps = maps, Maxima = input.Maxima };
+        return new Findings { Summary = Settle(summary, input), Mask = input.Study.Mask, Maps = maps, Maxima = input.Maxima };
     }
 }

@@ -26,6 +26,9 @@ public sealed record InferenceInput
     /// <summary>Every planned relabeling was used. If not, an exhaustive list counts as random draws: it is walked in pseudo-random order.</summary>
     public required bool Complete { get; init; }
 
+    /// <summary>The rule for stopping early as the chunks used leave it; null unless asked for.</summary>
+    internal RunSettling? Settling { get; init; }
+
     /// <summary>Signed T of each voxel (or variable), double precision; ±∞ where nothing is left over.</summary>
     public required double[] Observed { get; init; }
 

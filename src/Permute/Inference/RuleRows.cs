@@ -9,9 +9,15 @@ namespace Permute.Inference;
 /// <param name="Step">The smallest p, in steps of which exhaustive rates come.</param>
 internal sealed record RuleRows(double Alpha, BigInteger Possible, double Step)
 {
+    /// <summary>Small p of real-valued statistics are also approximated by a tail.</summary>
+    public bool ExtrapolateTail { get; init; }
+
     /// <summary>The permutation test of a real-valued statistic.</summary>
-    public PermutationSummary Permutation(NullDistribution maxima) =>
-        Permutation(maxima, Ties.Bound(maxima.Observed));
+    public PermutationSummary Permutation(NullDistribution maxima)
+    {
+        double floor = Ties.Bound(maxima.Observed);
+        return Permutation(maxima, floor) with { Tail = ExtrapolateTail ? TailExtrapolation.Of(maxima, maxima.DrawsFrom(floor)) : null };
+    }
 
     /// <summary>The permutation test of an extent in voxels.</summary>
     public PermutationSummary ExtentPermutation(NullDistribution extents) =>

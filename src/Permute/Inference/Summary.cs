@@ -135,6 +135,9 @@ public sealed record RelabelingSummary
 
     /// <summary>The smallest p that this design can reach.</summary>
     public required double SmallestP { get; init; }
+
+    /// <summary>The rule for stopping early; null unless asked for.</summary>
+    public StopSummary? Stop { get; init; }
 }
 
 /// <summary>Smoothness and the search region's size in resels.</summary>
@@ -179,7 +182,26 @@ public sealed record PermutationSummary
 
     /// <summary>What the interval leaves open: a sentence when it straddles α, with how many relabelings would settle it; else null.</summary>
     public string? Note { get; init; }
+
+    /// <summary>The approximation by a generalised Pareto tail; null unless asked for, and for extents, which are whole numbers.</summary>
+    public TailFit? Tail { get; init; }
+
+    /// <summary>Whether p is settled against α by the rule for stopping early; null unless that was asked for.</summary>
+    public SettledSummary? Settled { get; init; }
 }
+
+/// <summary>Whether an adjusted p is settled against α (<see cref="SequentialStop"/>).</summary>
+/// <param name="Side">"at most alpha", "above alpha", or "open".</param>
+/// <param name="Relabelings">Relabelings, the observed one included, at which it was found settled; null while open.</param>
+public sealed record SettledSummary(string Side, int? Relabelings);
+
+/// <summary>The rule for stopping early and what came of it.</summary>
+/// <param name="Stopped">The run ended before the relabelings planned, because every p of interest was settled.</param>
+/// <param name="Risk">Bound on the probability that any p of interest is settled on the wrong side of α.</param>
+/// <param name="Of">p of interest: those of the observed maxima of height and, at each forming threshold, extent and mass.</param>
+/// <param name="SettledOf">How many of them are settled.</param>
+/// <param name="Rule">The rule in one sentence.</param>
+public sealed record StopSummary(bool Stopped, double Risk, int Of, int SettledOf, string Rule);
 
 /// <summary>A parametric rule beside it: field theory or Bonferroni.</summary>
 public sealed record ParametricSummary

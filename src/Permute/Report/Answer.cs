@@ -3,13 +3,13 @@ using Permute.Inference;
 namespace Permute.Report;
 
 /// <summary>The sentences that answer the question, for screen and page alike, built from the summary only.</summary>
-internal sealed class Answer(Summary s)
+internal sealed partial class Answer(Summary s)
 {
     private readonly IReadOnlyList<Rule> rules = Rule.All(s);
 
     /// <summary>What survives and by which method; with what the Monte Carlo error leaves open.</summary>
     public IReadOnlyList<string> Sentences =>
-        [.. Limits(), Lead(), .. Others(), .. rules.Select(r => r.Method == Words.Permutation ? r.Remark : null).OfType<string>().Distinct()];
+        [.. Limits(), Lead(), .. Others(), .. rules.Select(r => r.Method == Words.Permutation ? r.Remark : null).OfType<string>().Distinct(), .. Tails(), .. FalseDiscovery(), .. Stop()];
 
     /// <summary>The highest voxel (or variable) and the cluster of the smallest p, each by every method.</summary>
     public IReadOnlyList<string> Strongest => [.. Strong()];

@@ -31,10 +31,10 @@ public static partial class HtmlReport
         }
         if (s.Variables.Count > 0)
         {
-            page.Heading(2, "Variables").Table(["variable", "#value", "#uncorrected p", "#permutation p", "#step-down p", "#Bonferroni p", "survives"],
+            page.Heading(2, "Variables").Table(["variable", "#value", "#uncorrected p", "#false discovery p", "#permutation p", "#step-down p", "#Bonferroni p", "survives"],
                 s.Variables.Select(v => (string[])
                 [
-                    v.Name, Show.Signed(v.Value), P(v.UncorrectedP), P(v.AdjustedP.Permutation), P(v.AdjustedP.StepDown), P(v.AdjustedP.Bonferroni), Finding.Of(s, v).SurvivesBy,
+                    v.Name, Show.Signed(v.Value), P(v.UncorrectedP), P(v.FalseDiscoveryP), P(v.AdjustedP.Permutation), P(v.AdjustedP.StepDown), P(v.AdjustedP.Bonferroni), Finding.Of(s, v).SurvivesBy,
                 ]), survives);
         }
     }
@@ -68,6 +68,12 @@ public static partial class HtmlReport
         if (s.Height.Bonferroni is not null) notes.Add($"Bonferroni over {Show.Count(s.Data.Voxels)} tests.");
         if (s.Extent is [var e0, ..]) notes.Add($"Clusters: values strictly above the threshold, joined with {e0.Neighbours} neighbours, each sign apart.");
         if (s.Peaks.Count + s.Variables.Count > 0) notes.Add("Step-down p: Westfall & Young (1993).");
+        if (s.Survivors is { FalseDiscoveryParametric: not null } or { FalseDiscoveryPermutation: not null }) notes.Add("False discovery rate: Benjamini & Hochberg (1995).");
+        if (Rule.All(s).Any(r => r.Tail is not null))
+            notes.Add("Tail approximation: generalised Pareto distribution (Knijnenburg et al. 2009; Winkler et al. 2016) by moments (Hosking & Wallis 1987), for maxima that fewer than 10 random " +
+                "ones reach, not for extents (whole numbers); exceedances lowered from 250 or a quarter until the Anderson–Darling test (p by parametric bootstrap) passes at 0.05. It decides nothing. " +
+                "Read it as an order of magnitude: it tends to be too small. The counted p beside it is the one to report.");
+        if (s.Relabelings.Stop is { } stop) notes.Add($"Early stop: {stop.Rule} Risk at most {Show.Given(stop.Risk)} over all of them.");
         return notes;
     }
 

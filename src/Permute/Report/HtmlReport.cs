@@ -62,9 +62,12 @@ public static partial class HtmlReport
                     r.EmpiricalFwer is null ? "" : Show.Percent(r.EmpiricalFwer, s.Alpha), Show.Interval(r.EmpiricalFwerInterval, p => Show.Percent(p, s.Alpha)), r.Verdict ?? "", r.Remark ?? "",
                 ];
             }));
+        Tails(page, s);
+        SurvivorCounts(page, s);
         if (answer.EmpiricalFwer is { } sentence) page.Paragraph(sentence);
         page.Paragraph(s.Relabelings.Exhaustive ? "All possible relabelings were used: the permutation figures have no Monte Carlo error, hence no interval."
-            : "Intervals are 95 % Monte Carlo intervals: what another draw of relabelings could have given.", "soft");
+            : "Intervals are 95 % Monte Carlo intervals: what another draw of relabelings could have given." +
+                (s.Relabelings.Stop is null ? "" : " Those of p hold whenever the run stops; those of thresholds and of the empirical FWER take the number of relabelings as fixed."), "soft");
     }
 
     private static void Diagnosis(HtmlPage page, Summary s)

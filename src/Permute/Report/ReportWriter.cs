@@ -22,6 +22,7 @@ public static class ReportWriter
 
         Add("summary.json", to => SummaryJson.Write(to, s));
         Add("thresholds.tsv", to => Tables.WriteThresholds(to, s));
+        if (s.Survivors is not null) Add("survivors.tsv", to => Tables.WriteSurvivors(to, s));
         Add("checks.tsv", to => Tables.WriteChecks(to, s));
         Add("null-maxima.tsv.gz", to => Tables.WriteNullMaxima(to, s, findings.Maxima));
         if (s.Sweep.Count > 0) Add("sweep.tsv", to => Tables.WriteSweep(to, s));

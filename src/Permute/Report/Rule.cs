@@ -30,6 +30,12 @@ internal sealed record Rule(string Measure, string Method, double? Observed)
 
     public DiagnosisSummary? Diagnosis { get; init; }
 
+    /// <summary>The approximation by a generalised Pareto tail, when asked for.</summary>
+    public TailFit? Tail { get; init; }
+
+    /// <summary>What the rule for stopping early made of p, when asked for.</summary>
+    public SettledSummary? Settled { get; init; }
+
     /// <summary>Every rule: height, extents, masses, enhanced values, combined; permutation before the rules beside it.</summary>
     public static IReadOnlyList<Rule> All(Summary s) =>
     [
@@ -83,6 +89,8 @@ internal sealed record Rule(string Measure, string Method, double? Observed)
         AdjustedP = p.AdjustedP,
         AdjustedPInterval = p.AdjustedPInterval,
         Remark = p.Note,
+        Tail = p.Tail,
+        Settled = p.Settled,
     };
 
     private Rule With(string method, ParametricSummary p) => this with

@@ -17,12 +17,13 @@ public static class Tables
         ["peak", "i", "j", "k", "x_mm", "y_mm", "z_mm", "value", "sign", "clusters", "permutation", "step_down", "field_theory", "bonferroni", "uncorrected_permutation", "survives"];
 
     private static readonly string[] OfVariable =
-        ["variable", "value", "sign", "uncorrected_permutation", "permutation", "step_down", "field_theory", "bonferroni", "survives"];
+        ["variable", "value", "sign", "uncorrected_permutation", "false_discovery_permutation", "permutation", "step_down", "field_theory", "bonferroni", "survives"];
 
     private static readonly string[] OfRule =
         ["measure", "forming_p", "forming_p_per_tail", "forming_value", "neighbours", "method", "observed_maximum", "threshold", "threshold_lower", "threshold_upper", "survives_if",
          "adjusted_p", "adjusted_p_lower", "adjusted_p_upper", "empirical_fwer", "empirical_fwer_lower", "empirical_fwer_upper", "verdict",
-         "voxels_above_relabelings", "voxels_above_theory", "clusters_relabelings", "clusters_theory", "voxels_per_cluster_relabelings", "voxels_per_cluster_theory", "remark"];
+         "voxels_above_relabelings", "voxels_above_theory", "clusters_relabelings", "clusters_theory", "voxels_per_cluster_relabelings", "voxels_per_cluster_theory", "remark",
+         "settled", "settled_at", "tail_p", "tail_exceedances", "tail_threshold", "tail_shape", "tail_scale", "tail_fit_p", "tail_remark"];
 
     /// <summary>thresholds.tsv: one row per measure, forming threshold and method. Extents: the smallest surviving extent.</summary>
     public static void WriteThresholds(Stream to, Summary s) => Write(to, OfRule, Rule.All(s).Select(Row));
@@ -42,7 +43,11 @@ public static class Tables
 
     /// <summary>variables.tsv: one row per variable of a table, in the order asked.</summary>
     public static void WriteVariables(Stream to, Summary s) => Write(to, OfVariable, s.Variables.Select(v => (object?[])
-        [v.Name, v.Value, v.Sign, v.UncorrectedP, v.AdjustedP.Permutation, v.AdjustedP.StepDown, v.AdjustedP.FieldTheory, v.AdjustedP.Bonferroni, Finding.Of(s, v).SurvivesBy]));
+        [v.Name, v.Value, v.Sign, v.UncorrectedP, v.FalseDiscoveryP, v.AdjustedP.Permutation, v.AdjustedP.StepDown, v.AdjustedP.FieldTheory, v.AdjustedP.Bonferroni, Finding.Of(s, v).SurvivesBy]));
+
+    /// <summary>survivors.tsv: how many voxels or variables each height rule finds, and what it controls.</summary>
+    public static void WriteSurvivors(Stream to, Summary s) =>
+        Write(to, ["rule", "controls", "survive", "of"], s.Survivors is null ? [] : SurvivorRow.All(s.Survivors).Select(r => (object?[])[r.Rule, r.Controls, r.Survive, s.Data.Voxels]));
 
     /// <summary>checks.tsv: each assumption with the figure measured, its limit and where the limit comes from.</summary>
     public static void WriteChecks(Stream to, Summary s) =>
@@ -74,6 +79,7 @@ public static class Tables
         r.AdjustedP, r.AdjustedPInterval?[0], r.AdjustedPInterval?[1], r.EmpiricalFwer, r.EmpiricalFwerInterval?[0], r.EmpiricalFwerInterval?[1], r.Verdict,
         r.Diagnosis?.VoxelsAbove.Relabelings, r.Diagnosis?.VoxelsAbove.Theory, r.Diagnosis?.ClusterCount.Relabelings, r.Diagnosis?.ClusterCount.Theory,
         r.Diagnosis?.VoxelsPerCluster.Relabelings, r.Diagnosis?.VoxelsPerCluster.Theory, r.Remark,
+        r.Settled?.Side, r.Settled?.Relabelings, r.Tail?.P, r.Tail?.Exceedances, r.Tail?.Threshold, r.Tail?.Shape, r.Tail?.Scale, r.Tail?.FitP, r.Tail?.Reason,
     ];
 
     private static void Write(Stream to, IEnumerable<string> header, IEnumerable<object?[]> rows)

@@ -88,7 +88,7 @@ internal static class Words
     public static string Relabelings(RelabelingSummary made, ModelSummary model)
     {
         string count = made.Exhaustive ? $"all {Show.Count(made.Used)} possible {made.Kind}" : $"{Show.Count(made.Used)} of {Show.Count(made.Possible)} possible {made.Kind}";
-        string stopped = made.Used < made.Planned ? $" ({Show.Count(made.Planned)} planned)" : "";
+        string stopped = made.Used < made.Planned ? $" ({Show.Count(made.Planned)} planned{(made.Stop is { Stopped: true } ? ", stopped when settled" : "")})" : "";
         string exact = (model.Exact ? "exact" : "approximate") + (model.Assumption == "" ? "" : $" under: {model.Assumption}");
         return $"{count}{stopped}, the observed one included, seed {made.Seed}; {exact}; smallest p attainable {Show.P(made.SmallestP, 2)}";
     }

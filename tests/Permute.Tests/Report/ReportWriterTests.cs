@@ -16,7 +16,7 @@ public sealed class ReportWriterTests : IDisposable
         var written = ReportWriter.Write(MadeUp.Survives(), folder).Select(p => Path.GetRelativePath(folder, p)).ToHashSet();
         string[] expected =
         [
-            "summary.json", "thresholds.tsv", "clusters.tsv", "peaks.tsv", "checks.tsv", "null-maxima.tsv.gz", "report.html", "figures/maximum-exceedance.svg",
+            "summary.json", "thresholds.tsv", "survivors.tsv", "clusters.tsv", "peaks.tsv", "checks.tsv", "null-maxima.tsv.gz", "report.html", "figures/maximum-exceedance.svg",
             "figures/smallest-surviving-extents.svg", "maps/t.nii.gz", "maps/estimate.nii.gz", "maps/height-p.nii.gz", "maps/extent-p-forming-0p01.nii.gz",
             "maps/agreement.nii.gz", "maps/mask.nii.gz",
         ];
@@ -28,7 +28,7 @@ public sealed class ReportWriterTests : IDisposable
     public void A_table_of_variables_has_no_maps_and_no_clusters()
     {
         var written = ReportWriter.Write(MadeUp.Variables(), folder).Select(p => Path.GetRelativePath(folder, p));
-        Assert.Equal(["checks.tsv", "figures/maximum-exceedance.svg", "null-maxima.tsv.gz", "report.html", "summary.json", "thresholds.tsv", "variables.tsv"], written.Order());
+        Assert.Equal(["checks.tsv", "figures/maximum-exceedance.svg", "null-maxima.tsv.gz", "report.html", "summary.json", "survivors.tsv", "thresholds.tsv", "variables.tsv"], written.Order());
         Assert.False(Directory.Exists(Path.Combine(folder, "maps")));
     }
 
