@@ -11,7 +11,7 @@ internal sealed class GroupPlan
     public GroupPlan(int images)
     {
         Images = images;
-        int outer = images >= 14 ? 8 : 0, inner = images - outer;
+        int outer = images >= 10 ? 8 : 0, inner = images - outer;
         int widest = inner <= 12 ? 6 : inner <= 20 ? 5 : 4;
         int innerGroups = (inner + widest - 1) / widest;
         Outer = outer == 0 ? 0 : 2;

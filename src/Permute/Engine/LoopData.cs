@@ -112,19 +112,18 @@ internal sealed class LoopData : IDisposable
         return (plan, values, TfceWorker.Exactly(new EnhancedMap(plan), heights, Both, values));
     }
 
+    // The few highest are kept in a queue, lowest first, so that most voxels cost one comparison.
     private static int[] Rank(double[] observed, Direction direction, int count)
     {
-        var evidence = new double[observed.Length];
-        for (int v = 0; v < observed.Length; v++) evidence[v] = -Oriented.Of(observed[v], direction);
-        var voxels = new int[observed.Length];
-        for (int v = 0; v < voxels.Length; v++) voxels[v] = v;
-        Array.Sort(evidence, voxels);
-        // Array.Sort is unstable: put voxels of equal evidence in the order of their positions, also across the cut.
-        for (int a = 0, b; a < voxels.Length && a < count; a = b)
+        var highest = new PriorityQueue<int, (double Evidence, int Before)>();
+        for (int v = 0; v < observed.Length && count > 0; v++)
         {
-            for (b = a + 1; b < voxels.Length && evidence[b] == evidence[a]; b++) { }
-            Array.Sort(voxels, a, b - a);
+            var rank = (Oriented.Of(observed[v], direction), -v);
+            if (highest.Count < count) highest.Enqueue(v, rank);
+            else if (highest.TryPeek(out _, out var lowest) && rank.CompareTo(lowest) > 0) highest.EnqueueDequeue(v, rank);
         }
-        return voxels[..count];
+        var ranked = new int[highest.Count];
+        for (int r = ranked.Length - 1; r >= 0; r--) ranked[r] = highest.Dequeue();
+        return ranked;
     }
 }

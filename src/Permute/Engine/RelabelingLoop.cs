@@ -96,8 +96,9 @@ public sealed class RelabelingLoop : IDisposable
         int tileSize = TileSize;
         foreach ((int first, int count) in store.Missing())
         {
-            // Equal tiles, and at least one for every thread when there is but one chunk.
-            int tiles = Math.Max((count + tileSize - 1) / tileSize, Math.Min(threads, (count + 63) / 64));
+            // Equal tiles, and as many for every thread unless they get small.
+            int tiles = (count + tileSize - 1) / tileSize, even = (tiles + threads - 1) / threads * threads;
+            tiles = Math.Max(tiles, Math.Min(even, (count + 63) / 64));
             var pending = new PendingChunk(first, count, tiles);
             for (int t = 0; t < tiles; t++)
             {

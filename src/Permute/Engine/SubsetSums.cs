@@ -137,16 +137,22 @@ internal sealed unsafe class SubsetSums<TLanes, TVector> : IBlockKernel
     private int AboveFloorAndLimits<TWays>(
         float* floor, int* places, ReadOnlySpan<float> limits, ulong* words, int stride, int shift) where TWays : struct, IWays
     {
-        int groups = plan.Bits.Length, outer = plan.Outer, inner = groups - outer, count = tile.Count, planes = limits.Length;
+        int groups = plan.Bits.Length, outer = plan.Outer, inner = groups - outer, count = tile.Count, planes = limits.Length, run = 0;
         var table = (byte*)tables;
         int* next = places;
+        TVector a0 = TLanes.All(0), a1 = a0, a2 = a0, a3 = a0;
         fixed (float* limit = limits)
         fixed (uint* offset = offsets)
+        fixed (int* starts = tile.RunStarts)
         {
             uint* at = offset;
             for (int p = 0; p < count; p++, at += groups)
             {
-                Outer(table, at, outer, out TVector a0, out TVector a1, out TVector a2, out TVector a3);
+                if (p == starts[run])
+                {
+                    Outer(table, at, outer, out a0, out a1, out a2, out a3);
+                    run++;
+                }
                 Inner(table, at + outer, inner, a0, a1, a2, a3, out TVector v0, out TVector v1, out TVector v2, out TVector v3);
                 ulong* word = words + p;
                 if (TWays.Both)
