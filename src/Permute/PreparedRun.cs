@@ -131,7 +131,7 @@ internal sealed class PreparedRun : IDisposable
     {
         var text = new StringBuilder("permute run 1\n");
         foreach (var (path, hash) in study.Sha256.OrderBy(p => p.Key, StringComparer.Ordinal)) text.Append(CultureInfo.InvariantCulture, $"file {hash} {Path.GetFileName(path)}\n");
-        text.AppendJoin(' ', design.Rows).Append('\n').AppendJoin(' ', study.Variables).Append('\n');
+        text.AppendJoin('\t', study.Rows).Append('\n').AppendJoin(' ', design.Rows).Append('\n').AppendJoin(' ', study.Variables).Append('\n');
         text.Append(CultureInfo.InvariantCulture, $"voxels {study.Data.Voxels} {design.Model.Statistic} {design.Model.Direction}\n");
         foreach (double x in design.Model.Regressors.SelectMany(r => r)) text.Append(CultureInfo.InvariantCulture, $"{x:R} ");
         foreach (double x in design.Model.Nuisance.Basis.SelectMany(b => b)) text.Append(CultureInfo.InvariantCulture, $"{x:R} ");

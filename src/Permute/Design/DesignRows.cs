@@ -61,7 +61,7 @@ internal static class DesignRows
                 ? $"{table.Path}: no level of '{column}' holds images of both groups, so no labels can change places inside it and the effect is confounded with it; the levels are {string.Join(", ", idle)}."
                 : $"{table.Path}: {what} is the same inside every level of '{column}', so no rows can change places and the effect is confounded with it; the levels are {string.Join(", ", idle)}.");
         if (idle.Count > 0)
-            cautions.Add($"Of column '{column}', {(idle.Count == 1 ? "this level allows" : "these levels allow")} no exchange and tell nothing about the effect: {string.Join(", ", idle)}.");
+            cautions.Add($"Of column '{column}', {(idle.Count == 1 ? "this level allows no exchange and tells" : "these levels allow no exchange and tell")} nothing about the effect: {string.Join(", ", idle)}.");
         return [.. blocks.Select(b => Array.IndexOf(names, b))];
     }
 

@@ -9,7 +9,7 @@ internal sealed partial class Answer(Summary s)
 
     /// <summary>What survives and by which method; with what the Monte Carlo error leaves open.</summary>
     public IReadOnlyList<string> Sentences =>
-        [.. Limits(), Lead(), .. Others(), .. rules.Select(r => r.Method == Words.Permutation ? r.Remark : null).OfType<string>().Distinct(), .. Tails(), .. FalseDiscovery(), .. Stop()];
+        [.. Limits(), Lead(), .. Others(), .. rules.Where(r => r.Method == Words.Permutation && r.Remark is not null).Select(r => $"{Capital(Name(r))}: {LowerFirst(r.Remark!)}"), .. Tails(), .. FalseDiscovery(), .. Stop()];
 
     /// <summary>The highest voxel (or variable) and the cluster of the smallest p, each by every method.</summary>
     public IReadOnlyList<string> Strongest => [.. Strong()];
@@ -40,6 +40,8 @@ internal sealed partial class Answer(Summary s)
 
     /// <summary>Checks that are not good.</summary>
     public IReadOnlyList<CheckSummary> Cautions => [.. s.Checks.Where(c => c.Level != "good").OrderBy(c => c.Level == "warning" ? 0 : 1)];
+
+    private static string LowerFirst(string text) => char.ToLowerInvariant(text[0]) + text[1..];
 
     private string Percent(double? rate) => Show.Percent(rate, s.Alpha);
 
