@@ -58,12 +58,23 @@ internal static class RunFolder
             if (!record.Request.Replace)
                 throw new InputException(
                     $"{run} holds another analysis (other data, model or options, fingerprint {other[..12]}… instead of {record.Fingerprint[..12]}…); choose another --out, or add --replace to start anew.");
-            Directory.Delete(Chunks(run), recursive: true);
+            Clear(run);
         }
         else if (!Exists(run) && Directory.Exists(run) && Directory.EnumerateFileSystemEntries(run).Any(e => !IsOwn(e)))
             throw new InputException($"{run} exists, is not empty and holds no analysis of ours; choose another --out.");
         Directory.CreateDirectory(Chunks(run));
         AtomicFile.Write(RequestPath(run), stream => JsonSerializer.Serialize(stream, record, Json));
+    }
+
+    // All of the other analysis goes, reports and maps too: a map it left must not be taken for one of the new analysis.
+    private static void Clear(string run)
+    {
+        foreach (string folder in new[] { "chunks", "maps", "figures" }.Select(f => Path.Combine(run, f)).Where(Directory.Exists)) Directory.Delete(folder, recursive: true);
+        string[] files =
+        [
+            "summary.json", "report.html", "null-maxima.tsv.gz", "thresholds.tsv", "clusters.tsv", "peaks.tsv", "variables.tsv", "survivors.tsv", "sweep.tsv", "checks.tsv",
+        ];
+        foreach (string file in files) File.Delete(Path.Combine(run, file));
     }
 
     /// <summary>The request of a run folder. Throws <see cref="InputException"/> when it is none.</summary>

@@ -52,6 +52,22 @@ public sealed class StepsTests : IDisposable
     }
 
     [Fact]
+    public async Task Replacing_an_analysis_leaves_none_of_its_maps_or_tables()
+    {
+        string study = SmallStudy.Write(scratch);
+        string[] args = ["test", "--study", study, "--relabelings", "100", "--out", scratch["run"]];
+        Assert.Equal(0, (await Cli.Run([.. args, "--record", "height", "tfce"])).Code);
+        File.WriteAllText(scratch["run/my-own-notes.txt"], "kept");
+        Assert.Equal(3, (await Cli.Run(args)).Code);
+        Assert.True(File.Exists(scratch["run/maps/tfce-p.nii.gz"]));
+
+        Assert.Equal(0, (await Cli.Run([.. args, "--replace"])).Code);
+        Assert.False(File.Exists(scratch["run/maps/tfce-p.nii.gz"]));
+        Assert.True(File.Exists(scratch["run/maps/height-p.nii.gz"]));
+        Assert.Equal("kept", File.ReadAllText(scratch["run/my-own-notes.txt"]));
+    }
+
+    [Fact]
     public async Task A_second_call_resumes_and_makes_no_relabeling_again()
     {
         string study = SmallStudy.Write(scratch);

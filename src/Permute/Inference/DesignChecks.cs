@@ -74,7 +74,7 @@ internal static class DesignChecks
         if (model.Exact) return null;
         bool flips = model.Relabelings.Kind == "sign flips";
         if (flips && model.Images < 16)
-            return Check.Of("few-images-with-covariates", Check.Warning, model.Images, 16, "simulations of this program's authors, Freedman & Lane 1983, J Bus Econ Stat 1:292–298 for the method",
+            return Check.Of("few-images-with-covariates", Check.Warning, model.Images, 16, "simulation; this program's tests hold the figure for 3 covariates at n = 8; Freedman & Lane 1983, J Bus Econ Stat 1:292–298 for the method",
                 $"Sign flips with covariates on {model.Images} images: the test is approximate, and at 8 images its false positive rate is near 0.06, 0.08 and 0.10 for 1, 2 and 3 covariates. Use fewer covariates or more images.");
         return Check.Of("relabelings-approximate", Check.Caution, model.Nuisance.Rank, null, "Freedman & Lane 1983, J Bus Econ Stat 1:292–298; Winkler et al. 2014, NeuroImage 92:381–397",
             "Relabeling does not leave the covariates in place, so the test is approximate (residuals of the reduced model are relabeled), even if all relabelings are used. Say so where p is reported.");
